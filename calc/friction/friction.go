@@ -42,15 +42,15 @@ const (
 // Result is the friction of the wall with what it rests on. Factors are not
 // Valid at rest.
 type Result struct {
-	Darcy             calc.Optional // f, the larger of the possible branches
-	Fanning           calc.Optional // f/4
-	Law               Law           // the law of the plain value
-	RelativeRoughness float64       // roughness / hydraulic diameter
-	WallShear         float64       // f ρ V²/8 [Pa], mean over the wetted perimeter
-	FrictionVelocity  float64       // sqrt(wall shear / ρ) [m/s]
-	RoughnessReynolds float64       // friction velocity · roughness / ν
+	Darcy             calc.Optional   // f, the larger of the possible branches
+	Fanning           calc.Optional   // f/4
+	Law               Law             // the law of the plain value
+	RelativeRoughness float64         // roughness / hydraulic diameter
+	WallShear         float64         // f ρ V²/8 [Pa], mean over the wetted perimeter
+	FrictionVelocity  float64         // sqrt(wall shear / ρ) [m/s]
+	RoughnessReynolds float64         // friction velocity · roughness / ν
 	RoughnessRegime   RoughnessRegime // zero where the flow is not turbulent
-	IfLaminar         calc.Optional // both branches where both regimes are possible
+	IfLaminar         calc.Optional   // both branches where both regimes are possible
 	IfTurbulent       calc.Optional
 	LawBelowRange     bool // Colebrook-White stands in for the chosen law, which ends above this Reynolds number
 }

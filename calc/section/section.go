@@ -30,20 +30,20 @@ type Section struct {
 // Properties are the geometric quantities of a section. A quantity without a
 // meaning in the case (the mean depth of a full pipe) is not Valid.
 type Properties struct {
-	FlowArea           float64       // A [m²]
-	WettedPerimeter    float64       // P [m], the free surface and dry walls excluded
-	HydraulicDiameter  float64       // Dh = 4 A / P [m]
-	HydraulicRadius    float64       // Rh = A / P [m]
-	EqualAreaDiameter  float64       // sqrt(4 A / π) [m]
-	FreeSurfaceWidth   calc.Optional // T [m]; only with a free surface or a dry top
-	MeanDepth          calc.Optional // A / T [m]
-	CentroidDepth      calc.Optional // depth of the centroid of A below the free surface [m]
-	FillRatio          calc.Optional // liquid depth / height of the section [1]; 1 when full
-	LaminarConstant    calc.Optional // Darcy f·Re on Dh [1]; not Valid: not known yet for this section
-	LaminarEquivalent  calc.Optional // Dh · 64 / LaminarConstant [m]
-	EqualFriction      calc.Optional // circular equivalent at equal friction and flow [m] (rectangle, flat oval)
-	Round              bool          // a full circle: the published regime limits are for it
-	FreeSurface        bool          // the liquid has a free surface
+	FlowArea          float64       // A [m²]
+	WettedPerimeter   float64       // P [m], the free surface and dry walls excluded
+	HydraulicDiameter float64       // Dh = 4 A / P [m]
+	HydraulicRadius   float64       // Rh = A / P [m]
+	EqualAreaDiameter float64       // sqrt(4 A / π) [m]
+	FreeSurfaceWidth  calc.Optional // T [m]; only with a free surface or a dry top
+	MeanDepth         calc.Optional // A / T [m]
+	CentroidDepth     calc.Optional // depth of the centroid of A below the free surface [m]
+	FillRatio         calc.Optional // liquid depth / height of the section [1]; 1 when full
+	LaminarConstant   calc.Optional // Darcy f·Re on Dh [1]; not Valid: not known yet for this section
+	LaminarEquivalent calc.Optional // Dh · 64 / LaminarConstant [m]
+	EqualFriction     calc.Optional // circular equivalent at equal friction and flow [m] (rectangle, flat oval)
+	Round             bool          // a full circle: the published regime limits are for it
+	FreeSurface       bool          // the liquid has a free surface
 }
 
 // Of returns the properties of the section.

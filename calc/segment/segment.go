@@ -85,17 +85,17 @@ type Pressure struct {
 
 // Conditions are what a reader of the result must know; the service words them.
 type Conditions struct {
-	AtRest             bool
-	RegimeUncertain    bool
-	BandAssumed        bool // regime limits of the round pipe on another section
-	LawBelowRange      bool
-	Developing         bool // length < entry length
-	BelowVapour        bool // lowest pressure under the vapour pressure
-	NotPositive        bool // lowest absolute pressure at or under zero
-	DepthGiven         bool // free surface: the depth is given, not solved
-	ConstantLossLowRe  bool // loss coefficient used below Re 1e4
+	AtRest              bool
+	RegimeUncertain     bool
+	BandAssumed         bool // regime limits of the round pipe on another section
+	LawBelowRange       bool
+	Developing          bool // length < entry length
+	BelowVapour         bool // lowest pressure under the vapour pressure
+	NotPositive         bool // lowest absolute pressure at or under zero
+	DepthGiven          bool // free surface: the depth is given, not solved
+	ConstantLossLowRe   bool // loss coefficient used below Re 1e4
 	ConstantLossLaminar bool
-	EndLossMissing     bool // a reservoir end and no loss coefficient at all
+	EndLossMissing      bool // a reservoir end and no loss coefficient at all
 }
 
 // Result keeps every intermediate value of the segment. The functions of this

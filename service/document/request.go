@@ -1,0 +1,177 @@
+// Package document is the one strict reader: from bytes to quantities. It reads
+// a request as the OpenAPI document states it, collects every violation with a
+// pointer to its field, and guesses nothing.
+package document
+
+import (
+	"borewright/calc"
+	"borewright/calc/flow"
+	"borewright/calc/fluid"
+	"borewright/calc/friction"
+	"borewright/calc/section"
+	"borewright/calc/units"
+)
+
+// Door is a calculation that a request asks for. Each door uses the blocks of
+// the doors before it and refuses the blocks that it does not use.
+type Door uint8
+
+// The doors of one calculation.
+const (
+	SectionDoor Door = iota + 1
+	RegimeDoor
+	FrictionDoor
+	SegmentDoor
+)
+
+// Number is a quantity of a request in SI, and whether it was given at all.
+type Number struct {
+	Value     float64
+	Given     bool
+	Basis     units.Basis // Gauge: the service adds the atmosphere of the site
+	Tolerance units.Tolerance
+}
+
+// Request is a document that has been read and found well-formed. It holds
+// numbers and names; the service resolves the names.
+type Request struct {
+	Door      Door
+	ID, Title string
+	Tags      []Tag
+
+	Section   Section
+	Fluid     Fluid
+	Flow      Flow
+	Roughness Number
+
+	Law            friction.Law
+	LawGiven       bool
+	DiameterRule   friction.DiameterRule
+	DiameterGiven  bool
+	LowerCritical  Number
+	UpperCritical  Number
+	Approach       flow.Approach
+	CalmTo         Number
+	Length, Rise   Number
+	Fittings       []Fitting
+	Inlet, Outlet  End
+	InletPressure  Number
+	OutletPressure Number
+	Site           Site
+}
+
+// Tag is free text that a list carries along.
+type Tag struct{ Name, Text string }
+
+// Section is a section block: a shape of the table and its dimensions in the
+// order of the table.
+type Section struct {
+	Given       bool
+	Spec        *ShapeSpec
+	Dims        [maxDims]Number // by the order of Spec.Fields
+	Vertices    [][2]float64    // polygon
+	DryEdges    []int           // polygon
+	Standard    string          // pipe by standard
+	Size        string
+	Schedule    string
+	LiquidDepth Number
+}
+
+const maxDims = 6
+
+// ShapeSpec is one row of the table of shapes: the name of the shape, its
+// numeric fields in order, and how calc's shape is built from them.
+type ShapeSpec struct {
+	Name   string
+	Fields []FieldSpec
+	// Build makes the shape from a section whose fields have been read. It is
+	// nil for the pipe, whose names the service resolves first.
+	Build func(*Section) section.Shape
+}
+
+// FieldSpec is one numeric field of a request: its input (name and bounds are
+// calc's), its kind, and whether it must be there.
+type FieldSpec struct {
+	Input    calc.Input
+	Kind     units.Kind
+	Required bool
+}
+
+// Fluid is a fluid given by its density and one viscosity.
+type Fluid struct {
+	Given              bool
+	Density            Number
+	DynamicViscosity   Number // exactly one of the two viscosities is given
+	KinematicViscosity Number
+	VapourPressure     Number
+	Phase              fluid.Phase // zero: not given
+}
+
+// Flow is a rate of flow in exactly one of its measures.
+type Flow struct {
+	Given   bool
+	By      flow.Measure
+	Measure Number
+}
+
+// Fitting is one entry of the fittings: a loss coefficient or a rated component.
+type Fitting struct {
+	LossCoefficient Number
+	Count           Number
+	RatedDrop       Number
+	RatedFlow       Number
+	Exponent        Number
+}
+
+// EndKind is what stands at one end of a segment.
+type EndKind uint8
+
+// The ends a request can name.
+const (
+	NoEnd EndKind = iota
+	SectionEnd
+	ReservoirEnd
+	FreeDischargeEnd
+)
+
+// End is one end of a segment.
+type End struct {
+	Kind    EndKind
+	Section Section
+}
+
+// Site is where the plant stands.
+type Site struct {
+	AtmosphericPressure Number // at most one of the two
+	Altitude            Number
+	Gravity             Number
+}
+
+// Violation is one thing that is wrong with a request.
+type Violation struct {
+	Pointer   string // JSON pointer without the leading "#", "/section/width"; "" is the whole document
+	Parameter string // name of a query parameter or column instead of a pointer
+	Code      string // stable, snake_case
+	Detail    string // what is wrong and what would be right
+}
+
+// Refusal is a request that cannot be answered, with everything found wrong.
+type Refusal struct {
+	Malformed  bool // not one readable document (400); else read and refused (422)
+	Violations []Violation
+}
+
+// Error gives the first violation; the rest stand in Violations.
+func (r *Refusal) Error() string {
+	if len(r.Violations) == 0 {
+		return "refused"
+	}
+	v := r.Violations[0]
+	return v.Pointer + v.Parameter + ": " + v.Detail
+}
+
+// Read reads one JSON request for the door. req is overwritten; it may be used
+// again, so that a busy server does not allocate. A refusal is a *Refusal.
+func Read(body []byte, door Door, req *Request) error {
+	return &Refusal{Malformed: true}
+}
