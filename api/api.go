@@ -1,0 +1,96 @@
+// Package api is the HTTP face of Borewright: routes, problem documents, limits
+// and the judge beside the strict reader. It stands on the service, knows no
+// engineering, and is the only package that knows status codes and echo.
+package api
+
+import (
+	"log/slog"
+	"net/http"
+	"sync/atomic"
+
+	"github.com/labstack/echo/v4"
+
+	"borewright/openapi"
+	"borewright/service"
+	"borewright/service/document"
+)
+
+// Answerer is what the HTTP face asks for. [service.Service] is the one that
+// calculates; tests put a failing one in its place.
+type Answerer interface {
+	// AnswerJSON appends the answer to one JSON request to dst. Its error is a
+	// *document.Refusal where the request is to blame.
+	AnswerJSON(dst, body []byte, door document.Door) ([]byte, error)
+	// Convert gives a quantity with its unit in another unit.
+	Convert(quantity, to string) (service.Conversion, error)
+}
+
+// Options say what an API stands on.
+type Options struct {
+	Service Answerer
+	// Logger gets the causes that no client is shown. nil discards them.
+	Logger *slog.Logger
+	// ValidateAlways lets kin-openapi judge every request that the strict reader
+	// accepted. It costs more than the calculation.
+	ValidateAlways bool
+}
+
+// API answers HTTP requests. It is safe for concurrent use.
+type API struct {
+	echo     *echo.Echo
+	service  Answerer
+	log      *slog.Logger
+	judge    *judge
+	ids      *requestIDs
+	state    atomic.Int32
+	document []byte // openapi.json
+}
+
+// New wires the routes. It fails only where the OpenAPI document is unusable,
+// which is a defect of the build.
+func New(o Options) (*API, error) {
+	doc, err := openapi.JSON()
+	if err != nil {
+		return nil, err
+	}
+	a := &API{service: o.Service, log: o.Logger, ids: newRequestIDs(), document: doc}
+	if a.log == nil {
+		a.log = slog.New(slog.DiscardHandler)
+	}
+	if o.ValidateAlways {
+		if a.judge, err = newJudge(doc); err != nil {
+			return nil, err
+		}
+	}
+	a.echo = echo.New()
+	a.echo.HTTPErrorHandler = a.fail
+	a.echo.Use(a.identify, a.recoverPanics, limitURL)
+	a.routes()
+	return a, nil
+}
+
+func (a *API) routes() {
+	for path, door := range map[string]document.Door{
+		"/v1/section":  document.SectionDoor,
+		"/v1/regime":   document.RegimeDoor,
+		"/v1/friction": document.FrictionDoor,
+		"/v1/segment":  document.SegmentDoor,
+	} {
+		a.echo.POST(path, a.calculation(door))
+	}
+	a.get("/v1/convert", a.convert)
+	a.get("/openapi.json", fixed("application/json", a.document))
+	a.get("/openapi.yaml", fixed("application/yaml", openapi.YAML()))
+	a.get("/livez", fixed("application/json", []byte(`{"status":"alive"}`)))
+	a.get("/readyz", a.readiness)
+}
+
+// get registers HEAD with GET: echo would refuse it, and a spreadsheet asks with
+// HEAD before it dares to GET.
+func (a *API) get(path string, h echo.HandlerFunc) {
+	a.echo.GET(path, h)
+	a.echo.HEAD(path, h)
+}
+
+// ServeHTTP answers one request.
+func (a *API) ServeHTTP(w http.ResponseWriter, r *http.Request) { a.echo.ServeHTTP(w, r) }

@@ -1,0 +1,122 @@
+package api
+
+import (
+	"bytes"
+	"encoding/json"
+	"net/http"
+	"strings"
+
+	"github.com/labstack/echo/v4"
+
+	"borewright/service/document"
+)
+
+// maxViolations bounds the list of a problem: a body of nonsense would otherwise
+// be answered with a longer one.
+const maxViolations = 100
+
+// problemDocument is the body of every refusal (RFC 9457).
+type problemDocument struct {
+	Type      string         `json:"type"`
+	Title     string         `json:"title"`
+	Status    int            `json:"status"`
+	Detail    string         `json:"detail"`
+	RequestID string         `json:"request_id"`
+	Errors    []problemError `json:"errors,omitempty"`
+}
+
+// problemError is one violation: where, what, and what would be right.
+type problemError struct {
+	Pointer   string `json:"pointer,omitempty"`
+	Parameter string `json:"parameter,omitempty"`
+	Code      string `json:"code"`
+	Detail    string `json:"detail"`
+}
+
+// fail answers an error. It is the one place that writes problem documents, and
+// the one that logs their causes.
+func (a *API) fail(err error, c echo.Context) {
+	r := explain(err)
+	res := c.Response()
+	if res.Committed {
+		a.cutOffAnswer(err, c)
+	}
+	a.logCause(err, r, c)
+	h := res.Header()
+	h.Set("Content-Type", "application/problem+json")
+	h.Set("Cache-Control", "no-store")
+	switch r.kind {
+	case notReady:
+		h.Set("Retry-After", "1")
+	case bodyTooLarge:
+		h.Set("Connection", "close")
+	}
+	if err := send(c, r.kind.status, r.document(h.Get(requestIDHeader))); err != nil {
+		a.log.Warn("the problem document did not reach its client", "request_id", h.Get(requestIDHeader), "cause", err)
+		return
+	}
+	if r.kind == bodyTooLarge {
+		drain(c)
+	}
+}
+
+// cutOffAnswer ends the connection: half an answer is out and cannot be taken
+// back, and no client shall take it for a whole one. Mostly the client has gone.
+func (a *API) cutOffAnswer(err error, c echo.Context) {
+	a.log.Warn("an answer was cut off", "request_id", c.Response().Header().Get(requestIDHeader), "route", c.Path(), "cause", err.Error())
+	panic(http.ErrAbortHandler)
+}
+
+func (a *API) logCause(err error, r *refusal, c echo.Context) {
+	if r.kind != internal && r.kind != calculationFailed {
+		return
+	}
+	args := []any{"request_id", c.Response().Header().Get(requestIDHeader), "method", c.Request().Method, "route", c.Path(), "cause", err.Error()}
+	if p, ok := err.(*panicked); ok {
+		args = append(args, "stack", string(p.stack))
+	}
+	a.log.Error("request failed by our fault", args...)
+}
+
+func (r *refusal) document(requestID string) []byte {
+	d := problemDocument{
+		Type: "/problems/" + r.kind.name, Title: r.kind.title, Status: r.kind.status, Detail: r.detail, RequestID: requestID,
+	}
+	for _, v := range r.violations[:min(len(r.violations), maxViolations)] {
+		d.Errors = append(d.Errors, newProblemError(v))
+	}
+	var b bytes.Buffer
+	enc := json.NewEncoder(&b)
+	enc.SetEscapeHTML(false) // "<" in a detail is for people to read; the media type keeps browsers from running it
+	if err := enc.Encode(d); err != nil {
+		panic(err) // strings and one int: the encoder has nothing to refuse
+	}
+	return bytes.TrimSuffix(b.Bytes(), []byte("\n"))
+}
+
+func newProblemError(v document.Violation) problemError {
+	e := problemError{Parameter: v.Parameter, Code: v.Code, Detail: v.Detail}
+	if v.Parameter == "" {
+		e.Pointer = fragment(v.Pointer)
+	}
+	return e
+}
+
+const (
+	unreserved = "-._~!$&'()*+,;=:@/?" // besides letters and digits: what a fragment may hold as it is (RFC 3986, 3.5)
+	hexDigits  = "0123456789ABCDEF"
+)
+
+// fragment writes a JSON pointer as a URI fragment (RFC 6901, section 6).
+func fragment(pointer string) string {
+	b := append(make([]byte, 0, len(pointer)+1), '#')
+	for i := range len(pointer) {
+		c := pointer[i]
+		if c|0x20 >= 'a' && c|0x20 <= 'z' || c >= '0' && c <= '9' || strings.IndexByte(unreserved, c) >= 0 {
+			b = append(b, c)
+		} else {
+			b = append(b, '%', hexDigits[c>>4], hexDigits[c&15])
+		}
+	}
+	return string(b)
+}
