@@ -68,6 +68,8 @@ func serve(p *process, args []string) int {
 		return p.fault("serve: cannot listen on %s: %v; another --listen address may be free, port 0 always is", f.listen, err)
 	}
 	l := &lifecycle{face: face, server: api.Server(face, log), log: log, signals: p.signals, flags: f}
+	// The address is open, so whoever reads of it may ask at once.
+	face.Ready()
 	welcome(p, listener.Addr().(*net.TCPAddr))
 	if err := l.run(listener); err != nil {
 		return p.fault("serve: %v", err)
@@ -124,12 +126,10 @@ type lifecycle struct {
 // errSecondSignal ends the process at once, with requests still running.
 var errSecondSignal = errors.New("stopped at once by a second signal")
 
-// run serves until a signal comes or serving fails. The listener is open
-// already, so ready is true from the moment it is said.
+// run serves until a signal comes or serving fails.
 func (l *lifecycle) run(listener net.Listener) error {
 	served := make(chan error, 1)
 	go func() { served <- l.server.Serve(listener) }()
-	l.face.Ready()
 	l.log.Info("ready", "address", listener.Addr().String())
 	select {
 	case err := <-served:
