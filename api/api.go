@@ -94,3 +94,12 @@ func (a *API) get(path string, h echo.HandlerFunc) {
 
 // ServeHTTP answers one request.
 func (a *API) ServeHTTP(w http.ResponseWriter, r *http.Request) { a.echo.ServeHTTP(w, r) }
+
+// Routes lists what is answered, as "METHOD /path".
+func (a *API) Routes() []string {
+	var list []string
+	for _, r := range a.echo.Routes() {
+		list = append(list, r.Method+" "+r.Path)
+	}
+	return list
+}

@@ -47,12 +47,23 @@ var echoing = answerer{
 func newFace(t testing.TB, a api.Answerer) (*api.API, *bytes.Buffer) {
 	t.Helper()
 	var logged bytes.Buffer
-	face, err := api.New(api.Options{Service: a, Logger: slog.New(slog.NewJSONHandler(&logged, nil))})
+	face, err := api.New(api.Options{Service: a, Logger: jsonLog(&logged)})
 	if err != nil {
 		t.Fatal(err)
 	}
 	face.Ready()
 	return face, &logged
+}
+
+func jsonLog(w io.Writer) *slog.Logger { return slog.New(slog.NewJSONHandler(w, nil)) }
+
+func encode(t testing.TB, v any) string {
+	t.Helper()
+	b, err := json.Marshal(v)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return string(b)
 }
 
 // ask sends one request; headers are name, value, name, value ...

@@ -73,11 +73,15 @@ func contradictions(err error, list []document.Violation) []document.Violation {
 	}
 	v := document.Violation{Code: "contradicts_document", Detail: "the OpenAPI document does not allow this"}
 	var schema *openapi3.SchemaError
-	if errors.As(err, &schema) {
+	var request *openapi3filter.RequestError
+	switch {
+	case errors.As(err, &schema):
 		v.Detail += ": " + schema.Reason
 		for _, name := range schema.JSONPointer() {
 			v.Pointer += "/" + strings.NewReplacer("~", "~0", "/", "~1").Replace(name)
 		}
+	case errors.As(err, &request):
+		v.Detail += ": " + request.Reason
 	}
 	return append(list, v)
 }
