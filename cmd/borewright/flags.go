@@ -4,6 +4,7 @@ import (
 	"errors"
 	"flag"
 	"fmt"
+	"io"
 	"strings"
 )
 
@@ -19,7 +20,7 @@ var errHelp = errors.New("help was asked for")
 // parseFlags reads args, and the environment for each flag that args do not
 // name. Nothing is ignored: a stray argument is an error.
 func parseFlags(p *process, fs *flag.FlagSet, args []string) error {
-	fs.SetOutput(discard{})
+	fs.SetOutput(io.Discard) // errors are printed once, by the command
 	if err := fs.Parse(args); errors.Is(err, flag.ErrHelp) {
 		printFlags(p, fs)
 		return errHelp
@@ -31,11 +32,6 @@ func parseFlags(p *process, fs *flag.FlagSet, args []string) error {
 	}
 	return readEnvironment(p, fs)
 }
-
-// discard keeps the flag package from printing: errors are printed once, by us.
-type discard struct{}
-
-func (discard) Write(b []byte) (int, error) { return len(b), nil }
 
 func readEnvironment(p *process, fs *flag.FlagSet) error {
 	given := map[string]bool{}

@@ -6,6 +6,7 @@ import (
 	"io"
 	"os"
 	"os/exec"
+	"slices"
 	"strings"
 	"sync"
 	"syscall"
@@ -59,7 +60,9 @@ func program(t *testing.T, env []string, args ...string) *exec.Cmd {
 		t.Fatal(err)
 	}
 	cmd := exec.Command(self, args...)
-	cmd.Env = append(append(os.Environ(), "TEST_AS_BOREWRIGHT=yes"), env...)
+	// What an operator has set on this machine must not reach the tests.
+	own := slices.DeleteFunc(os.Environ(), func(v string) bool { return strings.HasPrefix(v, "BOREWRIGHT_") })
+	cmd.Env = append(append(own, "TEST_AS_BOREWRIGHT=yes"), env...)
 	return cmd
 }
 
