@@ -38,8 +38,8 @@ type Input struct {
 	Roughness      float64
 	Law            friction.Law
 	DiameterRule   friction.DiameterRule
-	Length         float64 // developed length [m]
-	Rise           float64 // outlet level - inlet level [m]
+	Length         float64       // developed length [m]
+	Rise           calc.Optional // outlet level - inlet level [m]; not Valid: taken as level
 	Fittings       []fitting.Item
 	Inlet, Outlet  End
 	InletPressure  calc.Optional // static, absolute [Pa]; at most one of the two
@@ -96,6 +96,7 @@ type Conditions struct {
 	ConstantLossLowRe   bool // loss coefficient used below Re 1e4
 	ConstantLossLaminar bool
 	EndLossMissing      bool // a reservoir end and no loss coefficient at all
+	GasIncompressible   bool // a gas of given density, taken as incompressible
 }
 
 // Result keeps every intermediate value of the segment. The functions of this
@@ -109,12 +110,3 @@ type Result struct {
 	Pressure   Pressure
 	Conditions Conditions
 }
-
-// Regime fills the result to the flow regime.
-func Regime(in *Input, out *Result) error { return &calc.Error{Kind: calc.ErrUnknown} }
-
-// Friction fills the result to the friction of the wall.
-func Friction(in *Input, out *Result) error { return &calc.Error{Kind: calc.ErrUnknown} }
-
-// PressureDrop fills the whole result.
-func PressureDrop(in *Input, out *Result) error { return &calc.Error{Kind: calc.ErrUnknown} }
