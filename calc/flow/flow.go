@@ -52,18 +52,20 @@ const (
 type Criteria struct {
 	Lower, Upper calc.Optional // critical Reynolds numbers
 	Approach     Approach
-	CalmTo       float64 // Reynolds number to which calm flow can stay laminar; only with Calm
+	CalmTo       float64 // Reynolds number to which calm flow can stay laminar; given with Calm, and only then
 }
 
-// Regime is the flow regime and how sure it is.
+// Regime is the flow regime and how sure it is. Entry lengths are those of a round
+// pipe on the hydraulic diameter; the plain one is the larger of the branches that
+// are possible, and the branches stand only where both are.
 type Regime struct {
 	Reynolds          float64
 	Name              Name
 	CanBeLaminar      bool
 	CanBeTurbulent    bool
-	Lower, Upper      float64 // the critical Reynolds numbers used
-	AssumedForSection bool    // the band is of the round pipe, the section is not round
-	EntryLength       calc.Optional
-	EntryIfLaminar    calc.Optional // both branches where both regimes are possible
-	EntryIfTurbulent  calc.Optional
+	Lower, Upper      float64       // the critical Reynolds numbers used
+	AssumedForSection bool          // the band is of the round pipe, the section is not round
+	EntryLength       calc.Optional // [m]
+	EntryIfLaminar    calc.Optional // [m]
+	EntryIfTurbulent  calc.Optional // [m]
 }

@@ -1,10 +1,6 @@
 package flow
 
-import (
-	"math"
-
-	"borewright/calc"
-)
+import "borewright/calc"
 
 // Limits of the regimes of a round pipe, on the hydraulic diameter.
 const (
@@ -41,15 +37,21 @@ type RegimeInput struct {
 //
 // Validity: limits 2300 and 4000 for a round pipe with ordinary approach flow,
 // assumed for other sections; 2040 with a disturbed approach. Calm approach
-// keeps laminar flow possible up to the Reynolds number given with it, while the
-// name above the band stays turbulent.
+// keeps laminar flow possible up to and with the Reynolds number given with it,
+// while the name above the band stays turbulent; below the upper limit that number
+// has no effect. Limits given by the caller replace those of the approach. At
+// velocity 0 nothing is possible and the name is [AtRest]. Re from 1e-100.
 //
-// Source: common practice; Avila et al. 2011, Science 333, 192.
+// Source: common practice; Avila et al. 2011, Science 333, 192 (from memory); entry
+// lengths see [Regime].
 //
-// Accuracy: the limits are a convention within some hundreds.
+// Accuracy: Re to 2 ulp; the limits are a convention within some hundreds; entry
+// lengths 1e-12, testdata/flow/entry_length.csv, the laws behind them about 30 %
+// (common practice).
 //
-// Errors: [calc.ErrDomain] for impossible input or limits in the wrong order;
-// [calc.ErrNonFinite] on overflow.
+// Errors: [calc.ErrDomain] for impossible input, limits in the wrong order, or a
+// calm Reynolds number without calm approach and the reverse; [calc.ErrRange] for a
+// flow so small that no factor could be written; [calc.ErrNonFinite] on overflow.
 func RegimeOf(in RegimeInput) (Regime, error) {
 	if err := in.check(); err != nil {
 		return Regime{}, err
@@ -59,13 +61,27 @@ func RegimeOf(in RegimeInput) (Regime, error) {
 		return Regime{}, err
 	}
 	r.AssumedForSection = !in.Round && !(in.Criteria.Lower.Valid && in.Criteria.Upper.Valid)
-	r.Reynolds = in.Velocity * in.HydraulicDiameter / in.KinematicViscosity
-	if !calc.Finite(r.Reynolds) {
-		return Regime{}, &calc.Error{Kind: calc.ErrNonFinite, Quantity: "reynolds", Value: r.Reynolds}
+	if err := in.reynolds(&r); err != nil {
+		return Regime{}, err
 	}
 	r.name(in.Velocity, in.Criteria)
 	r.entry(in.HydraulicDiameter)
 	return r, nil
+}
+
+// leastReynolds keeps 1/Re and what is made of it finite.
+const leastReynolds = 1e-100
+
+func (in *RegimeInput) reynolds(r *Regime) error {
+	r.Reynolds = in.Velocity * in.HydraulicDiameter / in.KinematicViscosity
+	if !calc.Finite(r.Reynolds) {
+		return &calc.Error{Kind: calc.ErrNonFinite, Quantity: "reynolds", Value: r.Reynolds}
+	}
+	if in.Velocity > 0 && r.Reynolds < leastReynolds {
+		return &calc.Error{Kind: calc.ErrRange, Quantity: "velocity", Value: in.Velocity,
+			Detail: "the flow is so small that its Reynolds number is below 1e-100; say 0 for a fluid at rest"}
+	}
+	return nil
 }
 
 func (in *RegimeInput) check() error {
@@ -84,28 +100,46 @@ func (in *RegimeInput) check() error {
 // band gives the limits that hold for the criteria.
 func (c *Criteria) band() (Regime, error) {
 	r := Regime{Lower: DefaultLower, Upper: DefaultUpper}
+	if c.Approach > Calm {
+		return Regime{}, &calc.Error{Kind: calc.ErrDomain, Quantity: "approach_flow", Value: float64(c.Approach), Detail: "say ordinary, disturbed or calm"}
+	}
 	if c.Approach == Disturbed {
 		r.Lower = DisturbedLower
 	}
+	if err := c.given(&r); err != nil {
+		return Regime{}, err
+	}
+	if r.Lower > r.Upper {
+		return Regime{}, c.wrongOrder(r)
+	}
+	return r, c.checkCalm()
+}
+
+// given puts in the limits that the caller gave.
+func (c *Criteria) given(r *Regime) error {
 	if c.Lower.Valid {
+		if err := calc.LowerCriticalReynolds.Check(c.Lower.Value); err != nil {
+			return err
+		}
 		r.Lower = c.Lower.Value
 	}
 	if c.Upper.Valid {
+		if err := calc.UpperCriticalReynolds.Check(c.Upper.Value); err != nil {
+			return err
+		}
 		r.Upper = c.Upper.Value
 	}
-	for _, limit := range [2]struct {
-		in    calc.Input
-		value float64
-	}{{calc.LowerCriticalReynolds, r.Lower}, {calc.UpperCriticalReynolds, r.Upper}} {
-		if err := limit.in.Check(limit.value); err != nil {
-			return Regime{}, err
-		}
-	}
-	if r.Lower > r.Upper {
-		return Regime{}, &calc.Error{Kind: calc.ErrDomain, Quantity: "lower_critical_reynolds", Value: r.Lower, Max: r.Upper,
+	return nil
+}
+
+// wrongOrder points at the limit that the caller gave.
+func (c *Criteria) wrongOrder(r Regime) error {
+	if c.Lower.Valid {
+		return &calc.Error{Kind: calc.ErrDomain, Quantity: "lower_critical_reynolds", Value: r.Lower, Min: calc.LowerCriticalReynolds.Bound().Min, Max: r.Upper,
 			Detail: "the lower limit must not exceed the upper one, which is " + shortest(r.Upper)}
 	}
-	return r, c.checkCalm()
+	return &calc.Error{Kind: calc.ErrDomain, Quantity: "upper_critical_reynolds", Value: r.Upper, Min: r.Lower, Max: calc.UpperCriticalReynolds.Bound().Max,
+		Detail: "the upper limit must not be below the lower one, which is " + shortest(r.Lower)}
 }
 
 func (c *Criteria) checkCalm() error {
@@ -135,40 +169,4 @@ func (r *Regime) name(velocity float64, c Criteria) {
 		r.Name, r.CanBeTurbulent = Turbulent, true
 		r.CanBeLaminar = c.Approach == Calm && r.Reynolds <= c.CalmTo
 	}
-}
-
-// entry sets the entry length, the larger where both regimes can occur.
-func (r *Regime) entry(diameter float64) {
-	if r.CanBeLaminar {
-		r.EntryLength = calc.Some(LaminarEntryDiameters(r.Reynolds) * diameter)
-	}
-	if r.CanBeTurbulent {
-		turbulent := calc.Some(TurbulentEntryDiameters(r.Reynolds) * diameter)
-		if r.CanBeLaminar {
-			r.EntryIfLaminar, r.EntryIfTurbulent = r.EntryLength, turbulent
-		}
-		r.EntryLength.Valid = true
-		r.EntryLength.Value = math.Max(r.EntryLength.Value, turbulent.Value)
-	}
-}
-
-// LaminarEntryDiameters returns the length in hydraulic diameters over which a
-// laminar flow develops. Le/D = (0.619^1.6 + (0.0567 Re)^1.6)^(1/1.6) for a round
-// pipe, which holds down to creeping flow, where 0.06 Re would vanish. Source:
-// Durst et al. 2005, J. Fluids Eng. 127, 1154 (from memory).
-func LaminarEntryDiameters(reynolds float64) float64 {
-	const creeping = 0.4641998955855258 // 0.619^1.6
-	return math.Pow(creeping+math.Pow(0.0567*reynolds, 1.6), 1/1.6)
-}
-
-// TurbulentEntryDiameters returns the length in hydraulic diameters over which a
-// turbulent flow develops: Le/D = 1.359 Re^(1/4). Source: Bhatti & Shah 1987,
-// Handbook of Single-Phase Convective Heat Transfer (from memory).
-func TurbulentEntryDiameters(reynolds float64) float64 {
-	return 1.359 * math.Sqrt(math.Sqrt(reynolds))
-}
-
-// String is the name of the regime in the contract.
-func (n Name) String() string {
-	return [...]string{"", "at_rest", "laminar", "transitional", "turbulent"}[n]
 }

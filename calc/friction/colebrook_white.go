@@ -1,21 +1,10 @@
 package friction
 
-import (
-	"math"
+import "math"
 
-	"borewright/calc"
-)
-
-// Point is where a turbulent law is evaluated.
-type Point struct {
-	Reynolds          float64
-	RelativeRoughness float64 // roughness / diameter
-}
-
-// MaxRelativeRoughness is the roughest wall that the laws are used for.
-const MaxRelativeRoughness = 0.05
-
-const twoOverLn10 = 2 / math.Ln10
+// MaxReynolds is where the solution of Colebrook-White has been checked to; no pipe
+// comes near it.
+const MaxReynolds = 1e12
 
 // ColebrookWhite returns the Darcy friction factor of turbulent flow.
 //
@@ -38,7 +27,8 @@ const twoOverLn10 = 2 / math.Ln10
 // Accuracy: the equation is solved to 1e-15 relative; testdata/friction/colebrook.csv.
 // Against measured pipes the law itself is good to about 5 % (common practice).
 //
-// Errors: [calc.ErrRange] outside the bounds of Re and e.
+// Errors: [calc.ErrRange] outside the bounds of Re and e; [calc.ErrDomain] for what
+// is negative or not finite.
 func ColebrookWhite(p Point) (float64, error) {
 	if err := colebrookRange(p); err != nil {
 		return 0, err
@@ -47,12 +37,13 @@ func ColebrookWhite(p Point) (float64, error) {
 	return 1 / (x * x), nil
 }
 
+// colebrookRange is the range check on the way of every segment, in four
+// comparisons; a NaN fails them and is refused by the table's own check.
 func colebrookRange(p Point) error {
-	if !(p.Reynolds >= 1 && p.Reynolds <= 1e12) {
-		return &calc.Error{Kind: calc.ErrRange, Quantity: "friction_law", Value: p.Reynolds, Min: 1, Max: 1e12,
-			Detail: "colebrook_white is solved for Reynolds numbers from 1 to 1e12"}
+	if p.Reynolds >= 1 && p.Reynolds <= MaxReynolds && p.RelativeRoughness >= 0 && p.RelativeRoughness <= MaxRelativeRoughness {
+		return nil
 	}
-	return roughnessRange(p.RelativeRoughness, 0, MaxRelativeRoughness)
+	return laws[ColebrookWhiteLaw].Range.check(ColebrookWhiteLaw, p)
 }
 
 // lowReynolds is where the start of the two-step solution gives out.
@@ -116,23 +107,18 @@ func roughLog2(v float64) float64 {
 	return float64(int64(math.Float64bits(v))>>32)*(1.0/(1<<20)) - 1022.96
 }
 
-// Partials are a factor and its exact partial derivatives.
-type Partials struct {
-	Factor              float64
-	ByReynolds          float64
-	ByRelativeRoughness float64
-}
-
 // ColebrookWhitePartials returns the factor of [ColebrookWhite] with its exact
 // partial derivatives, by implicit differentiation.
 //
 // Equation:
 //
 //	x = 1/sqrt(f), u = e/3.7 + 2.51 x/Re, k = 2/ln 10
-//	∂x/∂Re = (k/u) 2.51 x/Re² / (1 + k 2.51/(Re u)), ∂x/∂e = -(k/u)/3.7 / (1 + k 2.51/(Re u)), ∂f = -2 x⁻³ ∂x
+//	∂x/∂Re = (k/u) 2.51 x/Re² / (1 + k 2.51/(Re u)),
+//	∂x/∂e = -(k/u)/3.7 / (1 + k 2.51/(Re u)), ∂f = -2 x⁻³ ∂x
 //
 // Symbols:
 //   - f: Darcy friction factor [1]
+//   - x, u, k: as the equation has them [1]
 //   - Re: Reynolds number [1]
 //   - e: roughness over diameter [1]
 //

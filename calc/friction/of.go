@@ -16,7 +16,7 @@ type Input struct {
 	HydraulicDiameter  float64       // [m]
 	LaminarConstant    calc.Optional // f·Re of the section
 	LaminarEquivalent  calc.Optional // [m]
-	Regime             flow.Regime
+	Regime             flow.Regime   // of the same flow, by [flow.RegimeOf]
 	Law                Law
 	DiameterRule       DiameterRule
 }
@@ -25,7 +25,7 @@ type Input struct {
 //
 // Equation:
 //
-//	laminar f = C/Re; turbulent f by the law at Re and ε/Dh;
+//	laminar f = C/Re; turbulent f by the law at Re D/Dh and ε/D;
 //	τ = f ρ V²/8, u* = V sqrt(f/8), ε⁺ = u* ε/ν
 //
 // Symbols:
@@ -33,7 +33,8 @@ type Input struct {
 //   - C: laminar constant of the section [1]
 //   - Re: Reynolds number on the hydraulic diameter [1]
 //   - ε: absolute roughness [m]
-//   - Dh: hydraulic diameter, or inside f the laminar equivalent one [m]
+//   - Dh: hydraulic diameter [m]
+//   - D: diameter inside f: Dh, or the laminar equivalent one by the rule [m]
 //   - τ: wall shear stress, mean over the wetted perimeter [Pa]
 //   - ρ: density [kg/m³]
 //   - V: velocity on the true flow area [m/s]
@@ -42,15 +43,23 @@ type Input struct {
 //   - ε⁺: roughness Reynolds number [1]
 //
 // Validity: fully developed flow of a Newtonian fluid; the ranges of the laws.
+// Where turbulent flow is possible, not certain, at a Reynolds number below the
+// range of the law, Colebrook-White stands in. At rest no factor is valid and the
+// rest is 0.
 //
-// Source: definitions, e.g. ISO 80000-11 for the numbers; laws see [Laws];
-// roughness regimes by Nikuradse 1933 (from memory).
+// Source: definitions, common practice; laws see [Laws]; roughness regimes by
+// Nikuradse, VDI-Forschungsheft 361, 1933 (from memory).
 //
-// Accuracy: exact arithmetic on the factor of the law.
+// Accuracy: 1e-15 on top of the factor of the law, see [Laws].
 //
 // Errors: [calc.ErrUnknown] where laminar flow is possible and the constant of
-// the section is not known; [calc.ErrRange] outside the range of the law.
+// the section is not known, or its equivalent diameter is asked for and not known;
+// [calc.ErrRange] outside the range of the law or for a turbulent wall rougher than
+// 0.05 D; [calc.ErrDomain] for impossible input; [calc.ErrNonFinite] on overflow.
 func Of(in Input) (Result, error) {
+	if err := in.check(); err != nil {
+		return Result{}, err
+	}
 	r := Result{RelativeRoughness: in.Roughness / in.HydraulicDiameter}
 	if in.Regime.Name == flow.AtRest {
 		return r, nil
@@ -58,20 +67,28 @@ func Of(in Input) (Result, error) {
 	if err := in.branches(&r); err != nil {
 		return Result{}, err
 	}
+	in.wall(&r)
+	if !calc.Finite(r.Darcy.Value) || !calc.Finite(r.WallShear) || !calc.Finite(r.RoughnessReynolds) {
+		return Result{}, &calc.Error{Kind: calc.ErrNonFinite, Quantity: "wall_shear_stress", Value: r.WallShear}
+	}
+	return r, nil
+}
+
+// wall gives what follows from the factor.
+func (in *Input) wall(r *Result) {
 	f := r.Darcy.Value
 	r.Fanning = calc.Some(f / 4)
-	r.WallShear = f * in.Density * in.Velocity * in.Velocity / 8
+	r.WallShear = f * in.Velocity * (in.Density * in.Velocity) / 8
 	r.FrictionVelocity = in.Velocity * math.Sqrt(f/8)
 	r.RoughnessReynolds = r.FrictionVelocity * in.Roughness / in.KinematicViscosity
 	if r.Law != LaminarLaw {
 		r.RoughnessRegime = roughnessRegime(r.RoughnessReynolds)
 	}
-	return r, nil
 }
 
 // branches evaluates each possible regime; the plain value is the larger one.
 func (in *Input) branches(r *Result) error {
-	var laminar, turbulent float64
+	var laminar float64
 	if in.Regime.CanBeLaminar {
 		if !in.LaminarConstant.Valid {
 			return &calc.Error{Kind: calc.ErrUnknown, Quantity: "laminar_constant",
@@ -83,70 +100,96 @@ func (in *Input) branches(r *Result) error {
 	if !in.Regime.CanBeTurbulent {
 		return nil
 	}
-	turbulent, below, err := in.turbulent()
+	turbulent, law, err := in.turbulent()
 	if err != nil {
 		return err
 	}
-	r.LawBelowRange = below
-	if !in.Regime.CanBeLaminar || turbulent > laminar {
-		r.Darcy, r.Law = calc.Some(turbulent), in.Law
-		if below {
-			r.Law = ColebrookWhiteLaw
-		}
-	}
+	r.LawBelowRange = law != in.Law
 	if in.Regime.CanBeLaminar {
 		r.IfLaminar, r.IfTurbulent = calc.Some(laminar), calc.Some(turbulent)
+	}
+	if !in.Regime.CanBeLaminar || turbulent > laminar {
+		r.Darcy, r.Law = calc.Some(turbulent), law
 	}
 	return nil
 }
 
-// turbulent evaluates the law; where turbulent flow is possible below the range
-// of the law, Colebrook-White stands in.
-func (in *Input) turbulent() (f float64, below bool, err error) {
-	diameter := in.HydraulicDiameter
-	if in.DiameterRule == LaminarEquivalentDiameter {
-		if !in.LaminarEquivalent.Valid {
-			return 0, false, &calc.Error{Kind: calc.ErrUnknown, Quantity: "friction_diameter",
-				Detail: "the laminar equivalent diameter is not known yet for this section; use hydraulic"}
-		}
-		diameter = in.LaminarEquivalent.Value
+// turbulent evaluates the law, or Colebrook-White where that has to stand in.
+func (in *Input) turbulent() (float64, Law, error) {
+	diameter, err := in.diameterInside()
+	if err != nil {
+		return 0, 0, err
 	}
 	p := Point{Reynolds: in.Regime.Reynolds * (diameter / in.HydraulicDiameter), RelativeRoughness: in.Roughness / diameter}
 	if p.RelativeRoughness > MaxRelativeRoughness {
-		return 0, false, tooRough(p.RelativeRoughness, diameter)
+		return 0, 0, tooRough(in.Roughness, diameter)
 	}
 	law := in.Law
-	if law != ColebrookWhiteLaw && p.Reynolds < laws[law].Range.MinReynolds && in.Regime.CanBeLaminar {
-		law, below = ColebrookWhiteLaw, true
+	if in.Regime.CanBeLaminar && p.Reynolds < laws[law].Range.MinReynolds {
+		law = ColebrookWhiteLaw
 	}
-	f, err = law.Factor(p)
-	return f, below, err
+	f, err := law.Factor(p)
+	return f, law, err
 }
 
-func tooRough(relative, diameter float64) error {
-	return &calc.Error{Kind: calc.ErrRange, Quantity: "roughness", Value: relative * diameter, Max: MaxRelativeRoughness * diameter,
-		Detail: "turbulent friction is known for a roughness of at most 0.05 of the diameter, here " + text(MaxRelativeRoughness*diameter) + " m; is the roughness in the right unit?"}
+// diameterInside is the diameter on which the turbulent law is evaluated.
+func (in *Input) diameterInside() (float64, error) {
+	if in.DiameterRule == HydraulicDiameter {
+		return in.HydraulicDiameter, nil
+	}
+	if !in.LaminarEquivalent.Valid {
+		return 0, &calc.Error{Kind: calc.ErrUnknown, Quantity: "friction_diameter",
+			Detail: "the laminar equivalent diameter is not known yet for this section; use hydraulic"}
+	}
+	return in.LaminarEquivalent.Value, nil
 }
 
-func roughnessRegime(plus float64) RoughnessRegime {
+func tooRough(roughness, diameter float64) error {
+	most := MaxRelativeRoughness * diameter
+	return &calc.Error{Kind: calc.ErrRange, Quantity: "roughness", Value: roughness, Max: most,
+		Detail: "turbulent friction is known for a roughness of at most 0.05 of the diameter, here " + text(most) + " m; is the roughness in the right unit?"}
+}
+
+// check refuses what no wall and no flow can have.
+func (in *Input) check() error {
 	switch {
-	case plus < SmoothBelow:
-		return HydraulicallySmooth
-	case plus <= RoughAbove:
-		return TransitionallyRough
+	case in.Regime.Name < flow.AtRest || in.Regime.Name > flow.Turbulent:
+		return &calc.Error{Kind: calc.ErrDomain, Quantity: "flow_regime", Value: float64(in.Regime.Name), Detail: "friction needs the regime of the flow"}
+	case !in.Law.turbulent():
+		return unknownLaw(in.Law)
+	case in.DiameterRule > LaminarEquivalentDiameter:
+		return &calc.Error{Kind: calc.ErrDomain, Quantity: "friction_diameter", Value: float64(in.DiameterRule), Detail: "say hydraulic or laminar_equivalent"}
 	}
-	return FullyRough
+	if err := calc.Density.Check(in.Density); err != nil {
+		return err
+	}
+	if err := calc.KinematicViscosity.Check(in.KinematicViscosity); err != nil {
+		return err
+	}
+	if err := calc.Roughness.Check(in.Roughness); err != nil {
+		return err
+	}
+	return in.checkFlow()
 }
 
-// String is the name of the roughness regime in the contract.
-func (r RoughnessRegime) String() string {
-	return [...]string{"", "smooth", "transitional", "rough"}[r]
-}
-
-func reynoldsRange(law string, re, least, most float64) error {
-	if re >= least && re <= most {
-		return nil
+// checkFlow refuses what did not come from a section and a regime.
+func (in *Input) checkFlow() error {
+	if !(in.Velocity >= 0) || !calc.Finite(in.Velocity) {
+		return &calc.Error{Kind: calc.ErrDomain, Quantity: "velocity", Value: in.Velocity, Detail: "flow runs from inlet to outlet; for the other direction swap the ends"}
 	}
-	return &calc.Error{Kind: calc.ErrRange, Quantity: "friction_law", Value: re, Min: least, Max: most,
-		Detail: law + " holds for Reynolds numbers from " + text(least) + " to " + text(most)}
+	for _, q := range [...]struct {
+		name  string
+		value float64
+		given bool
+	}{
+		{"hydraulic_diameter", in.HydraulicDiameter, true},
+		{"reynolds", in.Regime.Reynolds, in.Regime.Name != flow.AtRest},
+		{"laminar_constant", in.LaminarConstant.Value, in.LaminarConstant.Valid},
+		{"laminar_equivalent_diameter", in.LaminarEquivalent.Value, in.LaminarEquivalent.Valid},
+	} {
+		if q.given && (!(q.value > 0) || !calc.Finite(q.value)) {
+			return &calc.Error{Kind: calc.ErrDomain, Quantity: q.name, Value: q.value, Detail: "this must be positive and finite"}
+		}
+	}
+	return nil
 }
