@@ -78,14 +78,15 @@ func colebrookRoot(a, b, re float64) float64 {
 	return x - (x+k*log)*(1+d)/(1+d+g)
 }
 
-// colebrookLow takes Halley steps until they vanish. The left side is concave and
-// rises, so that from x = 0.1, left of every root for Re from 1 and e to 0.05, no
-// step can pass the root.
+// colebrookLow takes Newton steps until they vanish. The left side rises and is
+// concave, so that from the left no step passes the root. The start is left of it: below Re
+// 1000 every root lies between 0.1 and 5, and the equation maps what is right of
+// the root to what is left of it.
 func colebrookLow(a, b float64) float64 {
-	x := 0.1
-	for range 40 {
+	x := max(0.1, -twoOverLn10*math.Log(a+5*b))
+	for range 12 { // six are the most that any point takes
 		next := colebrookStep(a, b, x)
-		if math.Abs(next-x) <= 1e-6*x {
+		if next-x <= 1e-7*x {
 			return colebrookStep(a, b, next)
 		}
 		x = next
@@ -93,13 +94,9 @@ func colebrookLow(a, b float64) float64 {
 	return x
 }
 
-// colebrookStep is one step of Halley's method.
 func colebrookStep(a, b, x float64) float64 {
 	u := a + b*x
-	g := twoOverLn10 * b / u
-	value := x + twoOverLn10*math.Log(u)
-	slope := 1 + g
-	return x - value*slope/(slope*slope+value*g*g/(2*twoOverLn10))
+	return x - (x+twoOverLn10*math.Log(u))/(1+twoOverLn10*b/u)
 }
 
 // roughLog2 is log2 within 0.045, from the bits of the number: enough for a start.
