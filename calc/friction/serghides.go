@@ -20,7 +20,7 @@ import "math"
 //
 // Source: Serghides 1984, Chem. Eng. 91(5), 63 (from memory).
 //
-// Accuracy: arithmetic 1e-12, testdata/friction/colebrook.csv; within 0.003 % of
+// Accuracy: arithmetic 1e-12, testdata/friction/colebrook.csv; -0.0032 to 0 % of
 // Colebrook-White.
 //
 // Errors: [calc.ErrRange] outside the bounds of Re and e; [calc.ErrDomain] for what

@@ -18,8 +18,8 @@ import "math"
 //
 // Source: Swamee & Jain 1976, J. Hydraul. Div. ASCE 102, 657 (from memory).
 //
-// Accuracy: arithmetic 1e-12, testdata/friction/colebrook.csv; -0.7 to +3.3 % of
-// Colebrook-White.
+// Accuracy: arithmetic 1e-12, testdata/friction/colebrook.csv; -0.7 to +2.9 % of
+// Colebrook-White in its range.
 //
 // Errors: [calc.ErrRange] outside the bounds of Re and e; [calc.ErrDomain] for what
 // is negative or not finite.
