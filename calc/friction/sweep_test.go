@@ -5,8 +5,8 @@ import (
 	"go/ast"
 	"go/parser"
 	"go/token"
-	"io/fs"
 	"math"
+	"path/filepath"
 	"strings"
 	"testing"
 
@@ -139,29 +139,38 @@ func TestTheSweepMissesNoExportedFunction(t *testing.T) {
 // exported lists the exported functions and methods of the package.
 func exported(t *testing.T) []string {
 	t.Helper()
-	packages, err := parser.ParseDir(token.NewFileSet(), ".", func(f fs.FileInfo) bool { return !strings.HasSuffix(f.Name(), "_test.go") }, 0)
+	files, err := filepath.Glob("*.go")
 	if err != nil {
 		t.Fatal(err)
 	}
 	var names []string
-	for _, file := range packages["friction"].Files {
+	for _, name := range files {
+		if strings.HasSuffix(name, "_test.go") {
+			continue
+		}
+		file, err := parser.ParseFile(token.NewFileSet(), name, nil, 0)
+		if err != nil {
+			t.Fatal(err)
+		}
 		for _, d := range file.Decls {
-			fn, ok := d.(*ast.FuncDecl)
-			if !ok || !fn.Name.IsExported() {
-				continue
+			if fn, ok := d.(*ast.FuncDecl); ok && fn.Name.IsExported() {
+				names = append(names, qualified(fn))
 			}
-			name := fn.Name.Name
-			if fn.Recv != nil {
-				receiver := fn.Recv.List[0].Type
-				if star, ok := receiver.(*ast.StarExpr); ok {
-					receiver = star.X
-				}
-				name = receiver.(*ast.Ident).Name + "." + name
-			}
-			names = append(names, name)
 		}
 	}
 	return names
+}
+
+// qualified is the name of a function, with its receiver for a method.
+func qualified(fn *ast.FuncDecl) string {
+	if fn.Recv == nil {
+		return fn.Name.Name
+	}
+	receiver := fn.Recv.List[0].Type
+	if star, ok := receiver.(*ast.StarExpr); ok {
+		receiver = star.X
+	}
+	return receiver.(*ast.Ident).Name + "." + fn.Name.Name
 }
 
 func FuzzFriction(f *testing.F) {
