@@ -66,6 +66,9 @@ func RegimeOf(in RegimeInput) (Regime, error) {
 	}
 	r.name(in.Velocity, in.Criteria)
 	r.entry(in.HydraulicDiameter)
+	if !calc.Finite(r.EntryLength.Value) {
+		return Regime{}, &calc.Error{Kind: calc.ErrNonFinite, Quantity: "entry_length", Value: r.EntryLength.Value}
+	}
 	return r, nil
 }
 
