@@ -56,15 +56,16 @@ func RegimeOf(in RegimeInput) (Regime, error) {
 	if err := in.check(); err != nil {
 		return Regime{}, err
 	}
-	r, err := in.Criteria.band()
+	b, err := in.Criteria.band()
 	if err != nil {
 		return Regime{}, err
 	}
+	r := Regime{Lower: b.lower, Upper: b.upper}
 	r.AssumedForSection = !in.Round && !(in.Criteria.Lower.Valid && in.Criteria.Upper.Valid)
 	if err := in.reynolds(&r); err != nil {
 		return Regime{}, err
 	}
-	r.name(in.Velocity, in.Criteria)
+	r.name(in.Velocity, &in.Criteria)
 	r.entry(in.HydraulicDiameter)
 	if !calc.Finite(r.EntryLength.Value) {
 		return Regime{}, &calc.Error{Kind: calc.ErrNonFinite, Quantity: "entry_length", Value: r.EntryLength.Value}
@@ -100,49 +101,52 @@ func (in *RegimeInput) check() error {
 	return nil
 }
 
+// band is the limits between which both regimes are possible.
+type band struct{ lower, upper float64 }
+
 // band gives the limits that hold for the criteria.
-func (c *Criteria) band() (Regime, error) {
-	r := Regime{Lower: DefaultLower, Upper: DefaultUpper}
+func (c *Criteria) band() (band, error) {
+	b := band{lower: DefaultLower, upper: DefaultUpper}
 	if c.Approach > Calm {
-		return Regime{}, &calc.Error{Kind: calc.ErrDomain, Quantity: "approach_flow", Value: float64(c.Approach), Detail: "say ordinary, disturbed or calm"}
+		return band{}, &calc.Error{Kind: calc.ErrDomain, Quantity: "approach_flow", Value: float64(c.Approach), Detail: "say ordinary, disturbed or calm"}
 	}
 	if c.Approach == Disturbed {
-		r.Lower = DisturbedLower
+		b.lower = DisturbedLower
 	}
-	if err := c.given(&r); err != nil {
-		return Regime{}, err
+	if err := c.given(&b); err != nil {
+		return band{}, err
 	}
-	if r.Lower > r.Upper {
-		return Regime{}, c.wrongOrder(r)
+	if b.lower > b.upper {
+		return band{}, c.wrongOrder(b)
 	}
-	return r, c.checkCalm()
+	return b, c.checkCalm()
 }
 
 // given puts in the limits that the caller gave.
-func (c *Criteria) given(r *Regime) error {
+func (c *Criteria) given(b *band) error {
 	if c.Lower.Valid {
 		if err := calc.LowerCriticalReynolds.Check(c.Lower.Value); err != nil {
 			return err
 		}
-		r.Lower = c.Lower.Value
+		b.lower = c.Lower.Value
 	}
 	if c.Upper.Valid {
 		if err := calc.UpperCriticalReynolds.Check(c.Upper.Value); err != nil {
 			return err
 		}
-		r.Upper = c.Upper.Value
+		b.upper = c.Upper.Value
 	}
 	return nil
 }
 
 // wrongOrder points at the limit that the caller gave.
-func (c *Criteria) wrongOrder(r Regime) error {
+func (c *Criteria) wrongOrder(b band) error {
 	if c.Lower.Valid {
-		return &calc.Error{Kind: calc.ErrDomain, Quantity: "lower_critical_reynolds", Value: r.Lower, Min: calc.LowerCriticalReynolds.Bound().Min, Max: r.Upper,
-			Detail: "the lower limit must not exceed the upper one, which is " + shortest(r.Upper)}
+		return &calc.Error{Kind: calc.ErrDomain, Quantity: "lower_critical_reynolds", Value: b.lower, Min: calc.LowerCriticalReynolds.Bound().Min, Max: b.upper,
+			Detail: "the lower limit must not exceed the upper one, which is " + shortest(b.upper)}
 	}
-	return &calc.Error{Kind: calc.ErrDomain, Quantity: "upper_critical_reynolds", Value: r.Upper, Min: r.Lower, Max: calc.UpperCriticalReynolds.Bound().Max,
-		Detail: "the upper limit must not be below the lower one, which is " + shortest(r.Lower)}
+	return &calc.Error{Kind: calc.ErrDomain, Quantity: "upper_critical_reynolds", Value: b.upper, Min: b.lower, Max: calc.UpperCriticalReynolds.Bound().Max,
+		Detail: "the upper limit must not be below the lower one, which is " + shortest(b.lower)}
 }
 
 func (c *Criteria) checkCalm() error {
@@ -160,7 +164,7 @@ func (c *Criteria) checkCalm() error {
 	return nil
 }
 
-func (r *Regime) name(velocity float64, c Criteria) {
+func (r *Regime) name(velocity float64, c *Criteria) {
 	switch {
 	case velocity == 0:
 		r.Name = AtRest

@@ -68,7 +68,7 @@ func Of(in Input) (Result, error) {
 		return Result{}, err
 	}
 	in.wall(&r)
-	if !calc.Finite(r.Darcy.Value) || !calc.Finite(r.WallShear) || !calc.Finite(r.RoughnessReynolds) {
+	if !calc.Finite(r.Darcy.Value + r.WallShear + r.RoughnessReynolds) { // none is negative
 		return Result{}, &calc.Error{Kind: calc.ErrNonFinite, Quantity: "wall_shear_stress", Value: r.WallShear}
 	}
 	return r, nil
@@ -174,22 +174,26 @@ func (in *Input) check() error {
 
 // checkFlow refuses what did not come from a section and a regime.
 func (in *Input) checkFlow() error {
-	if !(in.Velocity >= 0) || !calc.Finite(in.Velocity) {
+	if !(in.Velocity >= 0 && in.Velocity <= math.MaxFloat64) {
 		return &calc.Error{Kind: calc.ErrDomain, Quantity: "velocity", Value: in.Velocity, Detail: "flow runs from inlet to outlet; for the other direction swap the ends"}
 	}
-	for _, q := range [...]struct {
-		name  string
-		value float64
-		given bool
-	}{
-		{"hydraulic_diameter", in.HydraulicDiameter, true},
-		{"reynolds", in.Regime.Reynolds, in.Regime.Name != flow.AtRest},
-		{"laminar_constant", in.LaminarConstant.Value, in.LaminarConstant.Valid},
-		{"laminar_equivalent_diameter", in.LaminarEquivalent.Value, in.LaminarEquivalent.Valid},
-	} {
-		if q.given && (!(q.value > 0) || !calc.Finite(q.value)) {
-			return &calc.Error{Kind: calc.ErrDomain, Quantity: q.name, Value: q.value, Detail: "this must be positive and finite"}
-		}
+	if !positive(in.HydraulicDiameter) {
+		return notPositive("hydraulic_diameter", in.HydraulicDiameter)
+	}
+	if in.Regime.Name != flow.AtRest && !positive(in.Regime.Reynolds) {
+		return notPositive("reynolds", in.Regime.Reynolds)
+	}
+	if in.LaminarConstant.Valid && !positive(in.LaminarConstant.Value) {
+		return notPositive("laminar_constant", in.LaminarConstant.Value)
+	}
+	if in.LaminarEquivalent.Valid && !positive(in.LaminarEquivalent.Value) {
+		return notPositive("laminar_equivalent_diameter", in.LaminarEquivalent.Value)
 	}
 	return nil
+}
+
+func positive(v float64) bool { return v > 0 && v <= math.MaxFloat64 }
+
+func notPositive(quantity string, v float64) error {
+	return &calc.Error{Kind: calc.ErrDomain, Quantity: quantity, Value: v, Detail: "this must be positive and finite"}
 }
