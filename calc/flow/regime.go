@@ -27,13 +27,15 @@ type RegimeInput struct {
 // Equation:
 //
 //	Re = V Dh/ν; laminar below the lower, turbulent above the upper limit, both
-//	possible from the lower to the upper one, the limits included
+//	possible from the lower to the upper one, the limits included;
+//	laminar Le/Dh = (0.619^1.6 + (0.0567 Re)^1.6)^(1/1.6), turbulent Le/Dh = 1.359 Re^(1/4)
 //
 // Symbols:
 //   - Re: Reynolds number [1]
 //   - V: velocity on the true flow area [m/s]
 //   - Dh: hydraulic diameter [m]
 //   - ν: kinematic viscosity [m²/s]
+//   - Le: entry length, the larger one where both regimes are possible [m]
 //
 // Validity: limits 2300 and 4000 for a round pipe with ordinary approach flow,
 // assumed for other sections; 2040 with a disturbed approach. Calm approach
@@ -43,7 +45,8 @@ type RegimeInput struct {
 // velocity 0 nothing is possible and the name is [AtRest]. Re from 1e-100.
 //
 // Source: common practice; Avila et al. 2011, Science 333, 192 (from memory); entry
-// lengths see [Regime].
+// lengths Durst et al. 2005, J. Fluids Eng. 127, 1154, and Bhatti & Shah 1987,
+// Handbook of Single-Phase Convective Heat Transfer, chapter 4 (from memory).
 //
 // Accuracy: Re to 2 ulp; the limits are a convention within some hundreds; entry
 // lengths 1e-12, testdata/flow/entry_length.csv, the laws behind them about 30 %

@@ -72,10 +72,9 @@ func colebrookRoot(a, b, re float64) float64 {
 	dx := value * slope / (slope*slope + 0.5*value*g*r)
 	x -= dx
 	d := -r * dx // u moves to u (1 + d)
-	s := d / (2 + d)
-	s2 := s * s
-	log += 2 * s * (1 + s2*(1.0/3+s2*(1.0/5+s2*(1.0/7)))) // ln(1+d) = 2 artanh(s)
-	return x - (x+k*log)*(1+d)/(1+d+g)
+	d2 := d * d
+	log += d * ((1 - d/2) + d2*((1.0/3-d/4)+d2*((1.0/5-d/6)+d2*(1.0/7)))) // ln(1+d) for |d| < 0.011
+	return x - (x+k*log)*((1+d)/(1+d+g))
 }
 
 // colebrookLow takes Newton steps until they vanish. The left side rises and is

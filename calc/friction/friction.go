@@ -49,7 +49,7 @@ type Result struct {
 	WallShear         float64         // f ρ V²/8 [Pa], mean over the wetted perimeter
 	FrictionVelocity  float64         // sqrt(wall shear / ρ) [m/s]
 	RoughnessReynolds float64         // friction velocity · roughness / ν
-	RoughnessRegime   RoughnessRegime // zero where the flow is not turbulent
+	RoughnessRegime   RoughnessRegime // zero where the plain value is laminar
 	IfLaminar         calc.Optional   // both branches where both regimes are possible
 	IfTurbulent       calc.Optional
 	LawBelowRange     bool // Colebrook-White stands in for the chosen law, which ends above this Reynolds number
