@@ -1,3 +1,5 @@
+//go:build doors
+
 package api
 
 import (
