@@ -39,10 +39,10 @@ func UnitFromASCII(text string, kind Kind) (Unit, error) {
 		}
 	}
 	u, bad := t.fromASCII(text)
-	if bad.code == "" && kind < kinds {
+	if bad == nil && kind < kinds {
 		bad = t.fits(&u, kind)
 	}
-	if bad.code != "" {
+	if bad != nil {
 		return Unit{}, bad.about(text, kind)
 	}
 	return u, nil
@@ -50,7 +50,7 @@ func UnitFromASCII(text string, kind Kind) (Unit, error) {
 
 // fromASCII undoes asciiOf: _per_ is the quotient, and an underscore the
 // product where the name with it is no unit.
-func (t *table) fromASCII(text string) (Unit, refusal) {
+func (t *table) fromASCII(text string) (Unit, *refusal) {
 	above, below, quotient := strings.Cut("_"+text, "_per_")
 	above = strings.TrimPrefix(above, "_")
 	if above == "" {
@@ -62,10 +62,10 @@ func (t *table) fromASCII(text string) (Unit, refusal) {
 		candidates = []string{above + "/" + below, above + "/(" + strings.ReplaceAll(below, "_", ".") + ")",
 			candidates[1] + "/" + below, candidates[1] + "/(" + strings.ReplaceAll(below, "_", ".") + ")"}
 	}
-	var first refusal
+	var first *refusal
 	for i, c := range candidates {
 		u, bad := t.readUnit(c, true)
-		if bad.code == "" {
+		if bad == nil {
 			return u, bad
 		}
 		if i == 0 {

@@ -12,6 +12,9 @@ var basisSuffixes = [...]struct {
 
 // cutBasis splits "bar(g)" or "bar abs" into the plain unit and its basis.
 func cutBasis(text string) (string, Basis) {
+	if strings.IndexByte(text, '(') < 0 && strings.IndexByte(text, '_') < 0 && strings.IndexByte(text, ' ') < 0 {
+		return text, Plain
+	}
 	for _, s := range basisSuffixes {
 		base, found := strings.CutSuffix(text, s.text)
 		if !found {
@@ -27,19 +30,19 @@ func cutBasis(text string) (string, Basis) {
 }
 
 // withBasis reads a plain pressure and marks it absolute or gauge.
-func (t *table) withBasis(base string, basis Basis, spelled bool) (Unit, refusal) {
+func (t *table) withBasis(base string, basis Basis, spelled bool) (Unit, *refusal) {
 	u, bad := t.readUnit(base, spelled)
-	if bad.code != "" {
+	if bad != nil {
 		return Unit{}, bad
 	}
 	if u.dimension != Pressure.Dimension() || u.basis != Plain {
-		return Unit{}, refusal{code: CodeMalformedUnit, reason: "only a plain pressure can be marked absolute or gauge, once"}
+		return Unit{}, &refusal{code: CodeMalformedUnit, reason: "only a plain pressure can be marked absolute or gauge, once"}
 	}
 	u.basis = basis
 	if spelled {
 		u.text = t.basisName(u.text, basis)
 	}
-	return u, refusal{}
+	return u, nil
 }
 
 // basisName is the name of a pressure unit with its basis: barg where there is

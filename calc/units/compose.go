@@ -7,37 +7,37 @@ import (
 
 // compiled multiplies the factors of an expression. What has an offset, a basis
 // or a reference state keeps its meaning only when it stands alone.
-func (p *parser) compiled() (Unit, refusal) {
+func (p *parser) compiled() (Unit, *refusal) {
 	if p.n == 1 && p.terms[0].exponent == 1 && p.terms[0].count == 1 {
-		return *p.terms[0].unit, refusal{}
+		return *p.terms[0].unit, nil
 	}
 	u := Unit{factor: one}
 	for i := range p.terms[:p.n] {
-		if bad := u.multiply(&p.terms[i]); bad.code != "" {
+		if bad := u.multiply(&p.terms[i]); bad != nil {
 			return Unit{}, bad
 		}
 	}
 	if !u.factor.usable() {
 		return Unit{}, p.malformed("its size is beyond what a number holds")
 	}
-	return u, refusal{}
+	return u, nil
 }
 
-func (u *Unit) multiply(t *term) refusal {
+func (u *Unit) multiply(t *term) *refusal {
 	switch v := t.unit; {
 	case v.role == point:
-		return refusal{code: CodeTemperatureDifference,
+		return &refusal{code: CodeTemperatureDifference,
 			reason: v.text + " is a point on a scale and cannot stand in a compound; write K or " + v.text + "_diff"}
 	case v.basis != Plain:
-		return refusal{code: CodePressureBasis, reason: v.text + " is a state and cannot stand in a compound; write the plain unit"}
+		return &refusal{code: CodePressureBasis, reason: v.text + " is a state and cannot stand in a compound; write the plain unit"}
 	case v.reference.Given() && (t.exponent != 1 || u.reference.Given()):
-		return refusal{code: CodeReferenceConditions, reason: v.text + " can stand once, as the volume that flows"}
+		return &refusal{code: CodeReferenceConditions, reason: v.text + " can stand once, as the volume that flows"}
 	case v.reference.Given():
 		u.reference = v.reference
 	}
 	var ok bool
 	if u.dimension, ok = u.dimension.with(t.unit.dimension, t.exponent); !ok {
-		return refusal{code: CodeMalformedUnit, reason: "its powers are too large"}
+		return &refusal{code: CodeMalformedUnit, reason: "its powers are too large"}
 	}
 	u.factor = u.factor.times(t.unit.factor.power(t.exponent))
 	if t.count > 1 {
@@ -47,7 +47,7 @@ func (u *Unit) multiply(t *term) refusal {
 		}
 		u.factor = u.factor.times(n)
 	}
-	return refusal{}
+	return nil
 }
 
 // spelling composes the one output form: factors in their order, products with

@@ -72,31 +72,32 @@ func ConvertAt(quantity, to string, atmosphere float64) (Conversion, error) {
 		return Conversion{}, &Error{Code: CodeNotFinite, Detail: "the pressure of the atmosphere must be positive and finite"}
 	}
 	t := tables()
-	from, bad := t.split(quantity, Other, nil)
-	if bad.code != "" {
+	var own Unit
+	from, tolerance, bad := t.split(quantity, Other, nil, &own)
+	if bad != nil {
 		return Conversion{}, bad.about(quantity, Other)
 	}
 	target, err := ParseUnit(to)
 	if err != nil {
 		return Conversion{}, err
 	}
-	c, bad := t.converted(from, &target, atmosphere)
-	if bad.code != "" {
+	c, bad := t.converted(from, &target, tolerance, atmosphere)
+	if bad != nil {
 		return Conversion{}, bad.about(quantity+" to "+to, Other)
 	}
 	return c, nil
 }
 
-func (t *table) converted(from parts, to *Unit, atmosphere float64) (Conversion, refusal) {
-	ratio, bad := agree(&from.unit, to)
-	if bad.code != "" {
+func (t *table) converted(from parts, to *Unit, tolerance string, atmosphere float64) (Conversion, *refusal) {
+	ratio, bad := agree(from.unit, to)
+	if bad != nil {
 		return Conversion{}, bad
 	}
 	y := from.unit.toSI(from.number)
 	q := Quantity{Value: y.round() + 0, Basis: from.unit.basis}
-	c := Conversion{Unit: to.text, Kind: sharedKind(&from.unit, to)}
-	if from.tolerance != "" {
-		if q.Tolerance, bad = t.tolerance(from, c.Kind, q, false); bad.code != "" {
+	c := Conversion{Unit: to.text, Kind: sharedKind(from.unit, to)}
+	if tolerance != "" {
+		if q.Tolerance, bad = t.tolerance(tolerance, measured{value: q.Value, unit: from.unit, kind: c.Kind}); bad != nil {
 			return Conversion{}, bad
 		}
 	}
@@ -110,27 +111,27 @@ func (t *table) converted(from parts, to *Unit, atmosphere float64) (Conversion,
 	c.Tolerance = q.Tolerance
 	c.Tolerance.HalfWidth = pair{hi: q.Tolerance.HalfWidth}.times(ratio).over(to.factor).round() + 0
 	if !isFinite(q.Value) || !isFinite(c.Value) || !isFinite(c.Tolerance.HalfWidth) {
-		return Conversion{}, refusal{code: CodeNotFinite, reason: "beyond what a number holds"}
+		return Conversion{}, &refusal{code: CodeNotFinite, reason: "beyond what a number holds"}
 	}
-	return c, refusal{}
+	return c, nil
 }
 
 // agree checks that one unit can become the other, and gives the ratio between
 // their values in SI: 1, but for volumes of gas at other reference conditions.
-func agree(from, to *Unit) (pair, refusal) {
+func agree(from, to *Unit) (pair, *refusal) {
 	if from.reference != to.reference {
 		return gasRatio(from, to)
 	}
 	switch {
 	case from.dimension != to.dimension:
-		return pair{}, refusal{code: CodeWrongDimension,
+		return pair{}, &refusal{code: CodeWrongDimension,
 			reason: from.text + " measures " + measure(from) + ", " + to.text + " measures " + measure(to)}
 	case (from.basis == Plain) != (to.basis == Plain):
-		return pair{}, refusal{code: CodePressureBasis, reason: "one unit says absolute or gauge and the other does not; say it in both or in none"}
+		return pair{}, &refusal{code: CodePressureBasis, reason: "one unit says absolute or gauge and the other does not; say it in both or in none"}
 	case from.role == point && to.role == difference || from.role == difference && to.role == point:
-		return pair{}, refusal{code: CodeTemperatureDifference, reason: "a point on a scale and a difference do not turn into each other"}
+		return pair{}, &refusal{code: CodeTemperatureDifference, reason: "a point on a scale and a difference do not turn into each other"}
 	}
-	return one, refusal{}
+	return one, nil
 }
 
 func measure(u *Unit) string {
@@ -142,17 +143,17 @@ func measure(u *Unit) string {
 
 // gasRatio turns volumes at reference conditions into amounts by the ideal gas,
 // n = p V / (R T), and amounts into other volumes.
-func gasRatio(from, to *Unit) (pair, refusal) {
+func gasRatio(from, to *Unit) (pair, *refusal) {
 	amount, ok := from.amount()
 	wanted, ok2 := to.amount()
 	if !ok || !ok2 {
-		return pair{}, refusal{code: CodeReferenceConditions,
+		return pair{}, &refusal{code: CodeReferenceConditions,
 			reason: "one unit is at reference conditions and the other at none; the actual state or the molar flow must be known"}
 	}
 	if amount.dimension != wanted.dimension {
-		return pair{}, refusal{code: CodeWrongDimension, reason: from.text + " and " + to.text + " do not measure the same"}
+		return pair{}, &refusal{code: CodeWrongDimension, reason: from.text + " and " + to.text + " do not measure the same"}
 	}
-	return amount.factor.over(wanted.factor), refusal{}
+	return amount.factor.over(wanted.factor), nil
 }
 
 // amount gives what one SI unit of u is worth in moles: 1 for an amount of

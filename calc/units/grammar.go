@@ -32,28 +32,30 @@ type parser struct {
 
 // readUnit reads a whole unit text: a name, a pressure with its basis, or an
 // expression. The output spelling is composed only when it is wanted.
-func (t *table) readUnit(text string, spelled bool) (Unit, refusal) {
+func (t *table) readUnit(text string, spelled bool) (Unit, *refusal) {
 	if u := t.units[text]; u != nil {
-		return *u, refusal{}
+		return *u, nil
 	}
 	if len(text) > maxUnitText {
-		return Unit{}, refusal{code: CodeMalformedUnit, reason: "longer than any unit"}
-	}
-	if bad, known := t.refused(text); known {
-		return Unit{}, bad
+		return Unit{}, &refusal{code: CodeMalformedUnit, reason: "longer than any unit"}
 	}
 	if base, basis := cutBasis(text); basis != Plain {
-		return t.withBasis(base, basis, spelled)
+		u, bad := t.withBasis(base, basis, spelled)
+		if bad != nil {
+			bad = t.explain(text, bad)
+		}
+		return u, bad
 	}
 	p := parser{names: t.units, text: text}
-	if bad := p.expression(1); bad.code != "" {
-		return Unit{}, t.explain(bad)
+	bad := p.expression(1)
+	if bad == nil && p.pos < len(text) {
+		bad = p.leftOver()
 	}
-	if p.pos < len(text) {
-		return Unit{}, p.leftOver()
+	if bad != nil {
+		return Unit{}, t.explain(text, bad)
 	}
 	u, bad := p.compiled()
-	if spelled && bad.code == "" {
+	if spelled && bad == nil {
 		u.text = p.spelling()
 	}
 	return u, bad
@@ -61,14 +63,14 @@ func (t *table) readUnit(text string, spelled bool) (Unit, refusal) {
 
 // expression reads factors joined by products and quotients; sign is that of
 // the exponents on its left end.
-func (p *parser) expression(sign int) refusal {
+func (p *parser) expression(sign int) *refusal {
 	p.skipBlanks()
 	s := sign
 	if p.accept("/") {
 		s = -sign
 	}
 	for {
-		if bad := p.component(s); bad.code != "" {
+		if bad := p.component(s); bad != nil {
 			return bad
 		}
 		p.skipBlanks()
@@ -78,34 +80,34 @@ func (p *parser) expression(sign int) refusal {
 		case p.accept("/"):
 			s = -sign
 		default:
-			return refusal{}
+			return nil
 		}
 		p.skipBlanks()
 	}
 }
 
-func (p *parser) component(sign int) refusal {
+func (p *parser) component(sign int) *refusal {
 	switch {
 	case p.accept("("):
 		return p.group(sign)
 	case p.peek() == '{':
 		return p.annotation()
 	}
-	if bad := p.atom(sign); bad.code != "" {
+	if bad := p.atom(sign); bad != nil {
 		return bad
 	}
 	if p.peek() == '{' {
 		return p.annotation()
 	}
-	return refusal{}
+	return nil
 }
 
-func (p *parser) group(sign int) refusal {
+func (p *parser) group(sign int) *refusal {
 	if p.depth++; p.depth > maxDepth {
 		return p.malformed("too many parentheses")
 	}
 	first := p.n
-	if bad := p.expression(sign); bad.code != "" {
+	if bad := p.expression(sign); bad != nil {
 		return bad
 	}
 	p.skipBlanks()
@@ -114,33 +116,33 @@ func (p *parser) group(sign int) refusal {
 	}
 	p.depth--
 	exponent, bad := p.exponent()
-	for i := first; i < p.n && bad.code == ""; i++ {
+	for i := first; i < p.n && bad == nil; i++ {
 		bad = p.raise(i, exponent)
 	}
 	return bad
 }
 
-func (p *parser) raise(i, exponent int) refusal {
+func (p *parser) raise(i, exponent int) *refusal {
 	e := p.terms[i].exponent * exponent
 	if e == 0 || e > maxExponent || e < -maxExponent {
 		return p.malformed("a power is 0 or beyond " + strconv.Itoa(maxExponent))
 	}
 	p.terms[i].exponent = e
-	return refusal{}
+	return nil
 }
 
 // annotation skips the braces of UCUM, which do not change a unit.
-func (p *parser) annotation() refusal {
+func (p *parser) annotation() *refusal {
 	end := strings.IndexByte(p.text[p.pos:], '}')
 	if end < 0 {
 		return p.malformed("a brace is not closed")
 	}
 	p.pos += end + 1
-	return refusal{}
+	return nil
 }
 
 // atom reads a name with its exponent, an integer, or both (100ft).
-func (p *parser) atom(sign int) refusal {
+func (p *parser) atom(sign int) *refusal {
 	rest := p.text[p.pos:]
 	if strings.HasPrefix(rest, "10*") || strings.HasPrefix(rest, "10^") {
 		p.pos += 3
@@ -148,7 +150,7 @@ func (p *parser) atom(sign int) refusal {
 		return p.push(bad, term{p.names["10*"], 1, sign * exponent})
 	}
 	count, bad := p.count()
-	if bad.code != "" {
+	if bad != nil {
 		return bad
 	}
 	symbol := p.symbol()
@@ -156,7 +158,7 @@ func (p *parser) atom(sign int) refusal {
 		if count == 0 {
 			return p.malformed("a unit is missing")
 		}
-		return p.push(refusal{}, term{p.names["1"], count, sign})
+		return p.push(nil, term{p.names["1"], count, sign})
 	}
 	u := p.names[symbol]
 	exponent, bad := p.exponent()
@@ -166,7 +168,7 @@ func (p *parser) atom(sign int) refusal {
 		}
 	}
 	if u == nil {
-		return refusal{code: CodeUnknownUnit, symbol: symbol}
+		return &refusal{code: CodeUnknownUnit, symbol: symbol}
 	}
 	return p.push(bad, term{u, max(count, 1), sign * exponent})
 }
@@ -179,8 +181,8 @@ func (p *parser) gasVolume(symbol string) *Unit {
 	return nil
 }
 
-func (p *parser) push(bad refusal, t term) refusal {
-	if bad.code != "" {
+func (p *parser) push(bad *refusal, t term) *refusal {
+	if bad != nil {
 		return bad
 	}
 	if p.n == maxTerms {
@@ -192,7 +194,7 @@ func (p *parser) push(bad refusal, t term) refusal {
 }
 
 // count reads an integer before a name; 0 where there is none.
-func (p *parser) count() (uint32, refusal) {
+func (p *parser) count() (uint32, *refusal) {
 	first := p.pos
 	var n uint32
 	for p.pos < len(p.text) && isDigit(p.text[p.pos]) {
@@ -205,7 +207,7 @@ func (p *parser) count() (uint32, refusal) {
 	if p.pos > first && p.text[first] == '0' {
 		return 0, p.malformed("a number in the unit begins with 0")
 	}
-	return n, refusal{}
+	return n, nil
 }
 
 // symbol reads a name without the digits of its exponent.
@@ -244,7 +246,7 @@ func (p *parser) endsSymbol() bool {
 var superscripts = [10]string{"⁰", "¹", "²", "³", "⁴", "⁵", "⁶", "⁷", "⁸", "⁹"}
 
 // exponent reads m2, m^2, m-2, m^-2, m² or m⁻²; 1 where there is none.
-func (p *parser) exponent() (int, refusal) {
+func (p *parser) exponent() (int, *refusal) {
 	caret := p.accept("^")
 	negative := p.accept("-") || p.accept("⁻")
 	n, found := p.digits()
@@ -252,16 +254,16 @@ func (p *parser) exponent() (int, refusal) {
 		if caret || negative {
 			return 0, p.malformed("a power is missing")
 		}
-		return 1, refusal{}
+		return 1, nil
 	}
 	if negative {
 		n = -n
 	}
-	return n, refusal{}
+	return n, nil
 }
 
 // powerOfTen reads the exponent of UCUM's 10*; 1 where there is none.
-func (p *parser) powerOfTen() (int, refusal) {
+func (p *parser) powerOfTen() (int, *refusal) {
 	negative := p.accept("-")
 	if !negative {
 		p.accept("+")
@@ -271,12 +273,12 @@ func (p *parser) powerOfTen() (int, refusal) {
 		return 0, p.malformed("a power is missing")
 	}
 	if !found {
-		return 1, refusal{}
+		return 1, nil
 	}
 	if negative {
 		n = -n
 	}
-	return n, refusal{}
+	return n, nil
 }
 
 // digits reads plain or superscript digits.
@@ -326,16 +328,16 @@ func (p *parser) skipBlanks() {
 	}
 }
 
-func (p *parser) malformed(reason string) refusal {
-	return refusal{code: CodeMalformedUnit, reason: reason}
+func (p *parser) malformed(reason string) *refusal {
+	return &refusal{code: CodeMalformedUnit, reason: reason}
 }
 
 // leftOver explains text behind a complete unit; a blank before it is the
 // product that somebody meant.
-func (p *parser) leftOver() refusal {
+func (p *parser) leftOver() *refusal {
 	if p.text[p.pos-1] == ' ' {
 		left := strings.TrimRight(p.text[:p.pos], " ")
-		if _, bad := (&table{units: p.names}).readUnit(p.text[p.pos:], false); bad.code == "" {
+		if _, bad := (&table{units: p.names}).readUnit(p.text[p.pos:], false); bad == nil {
 			return p.malformed("a blank is no product; for a product write " + left + "." + p.text[p.pos:])
 		}
 	}

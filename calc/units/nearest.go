@@ -18,11 +18,17 @@ func (t *table) nearest(symbol string) []string {
 	}
 	var found [3][]string
 	for _, u := range t.outputs {
+		if kindOf(u) == Other {
+			continue
+		}
 		if d := distance(symbol, u.text); d < len(found) && !slices.Contains(found[d], u.text) {
 			found[d] = append(found[d], u.text)
 		}
 	}
-	names := slices.Concat(found[0], found[1])
+	names := found[0]
+	if len(symbol) > 1 {
+		names = append(names, found[1]...)
+	}
 	if len(symbol) > 4 {
 		names = append(names, found[2]...)
 	}

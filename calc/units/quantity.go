@@ -25,7 +25,7 @@ type Quantity struct {
 // accepted only for a dimensionless kind.
 func Parse(text string, kind Kind) (Quantity, error) {
 	q, bad := parse(text, kind, nil)
-	if bad.code != "" {
+	if bad != nil {
 		return Quantity{}, bad.about(text, kind)
 	}
 	return q, nil
@@ -35,10 +35,18 @@ func Parse(text string, kind Kind) (Quantity, error) {
 // number alone, or with a tolerance.
 func ParseIn(number string, unit Unit, kind Kind) (Quantity, error) {
 	q, bad := parse(number, kind, &unit)
-	if bad.code != "" {
+	if bad != nil {
 		return Quantity{}, bad.about(number, kind)
 	}
 	return q, nil
+}
+
+// Measures refuses a unit, of a column header say, that is none of the kind.
+func (u Unit) Measures(kind Kind) error {
+	if bad := tables().fits(&u, kind); bad != nil {
+		return bad.about(u.text, kind)
+	}
+	return nil
 }
 
 // ParseUnit reads a unit alone, as a column header or a conversion names it.
@@ -46,93 +54,94 @@ func ParseUnit(text string) (Unit, error) {
 	t := tables()
 	body := trimBlanks(text)
 	if body == "" {
-		return Unit{}, refusal{code: CodeBlank, reason: "blank, where a unit belongs"}.about(text, Other)
+		return Unit{}, (&refusal{code: CodeBlank, reason: "blank, where a unit belongs"}).about(text, Other)
 	}
 	u, bad := t.readUnit(body, true)
-	if bad.code != "" {
+	if bad != nil {
 		return Unit{}, bad.about(text, Other)
 	}
 	return u, nil
 }
 
-func parse(text string, kind Kind, header *Unit) (Quantity, refusal) {
+func parse(text string, kind Kind, header *Unit) (Quantity, *refusal) {
 	t := tables()
-	split, bad := t.split(text, kind, header)
-	if bad.code != "" {
+	var own Unit
+	p, tolerance, bad := t.split(text, kind, header, &own)
+	if bad != nil {
 		return Quantity{}, bad
 	}
-	if bad := t.fits(&split.unit, kind); bad.code != "" {
+	if bad := t.fits(p.unit, kind); bad != nil {
 		return Quantity{}, bad
 	}
-	q := Quantity{Value: split.unit.toSI(split.number).round() + 0, Basis: split.unit.basis}
+	q := Quantity{Value: p.unit.toSI(p.number).round() + 0, Basis: p.unit.basis}
 	if kind == ReferenceVolumeFlow {
-		q.Reference = split.unit.reference
+		q.Reference = p.unit.reference
 	}
 	if !isFinite(q.Value) {
-		return Quantity{}, refusal{code: CodeNotFinite, reason: "beyond what a number holds"}
+		return Quantity{}, &refusal{code: CodeNotFinite, reason: "beyond what a number holds"}
 	}
-	if split.tolerance != "" {
-		q.Tolerance, bad = t.tolerance(split, kind, q, header != nil)
+	if tolerance != "" {
+		q.Tolerance, bad = t.tolerance(tolerance, measured{q.Value, p.unit, kind, header != nil})
 	}
 	return q, bad
 }
 
 // parts of a quantity text.
 type parts struct {
-	number    pair
-	unit      Unit
-	tolerance string // behind the mark, "" without one
+	number pair
+	unit   *Unit
 }
 
 // split takes a text apart: its number, its unit (or the header's) and what
-// follows ±.
-func (t *table) split(text string, kind Kind, header *Unit) (parts, refusal) {
+// follows ±, "" without it. A unit that is no name of the tables is composed in own.
+func (t *table) split(text string, kind Kind, header, own *Unit) (p parts, tolerance string, bad *refusal) {
 	body := trimBlanks(text)
 	r, ok := scanNumber(body)
 	if !ok {
-		return parts{}, noNumber(body)
+		return p, "", noNumber(body)
 	}
 	rest := trimBlanks(body[r.end:])
-	p := parts{number: r.value}
+	p.number = r.value
 	if header == nil && rest != "" && !isDigit(rest[0]) {
-		if u := t.units[rest]; u != nil {
-			p.unit = *u
-			return p, refusal{}
+		if p.unit = t.units[rest]; p.unit != nil {
+			return p, "", nil
 		}
 	}
 	if !isFinite(r.value.hi) {
-		return parts{}, refusal{code: CodeNotFinite, reason: "beyond what a number holds"}
+		return p, "", &refusal{code: CodeNotFinite, reason: "beyond what a number holds"}
 	}
-	if bad := badContinuation(body, r.end); bad.code != "" {
-		return parts{}, bad
+	if bad := badContinuation(body, r.end); bad != nil {
+		return p, "", bad
 	}
-	rest, p.tolerance = cutTolerance(rest)
-	return t.unitOf(p, rest, kind, header)
+	rest, tolerance = cutTolerance(rest)
+	p.unit, bad = t.unitOf(rest, kind, header, own)
+	return p, tolerance, bad
 }
 
 // unitOf fills in the unit: the text's own, the header's, or the number one.
-func (t *table) unitOf(p parts, rest string, kind Kind, header *Unit) (parts, refusal) {
-	var bad refusal
-	switch {
+func (t *table) unitOf(rest string, kind Kind, header, own *Unit) (*Unit, *refusal) {
+	switch u := t.units[rest]; {
 	case rest == "" && header != nil:
-		p.unit = *header
+		return header, nil
 	case rest == "" && (kind == Dimensionless || kind == Other):
-		p.unit = *t.units["1"]
+		return t.units["1"], nil
 	case rest == "":
-		bad = refusal{code: CodeUnitRequired, reason: "a number without a unit; in SI it would be in " + kind.SI() + ", so write the unit"}
+		return nil, &refusal{code: CodeUnitRequired, reason: "a number without a unit; in SI it would be in " + kind.SI() + ", so write the unit"}
 	case header != nil:
-		bad = refusal{code: CodeMalformedUnit, reason: "the column already gives the unit " + header.text + "; write the number alone"}
-	default:
-		p.unit, bad = t.readUnit(rest, kind >= kinds)
-		if bad.code == "" && p.unit.text == "" && t.fits(&p.unit, kind).code != "" {
-			p.unit, bad = t.readUnit(rest, true) // the refusal needs its spelling
-		}
+		return nil, &refusal{code: CodeMalformedUnit, reason: "the column already gives the unit " + header.text + "; write the number alone"}
+	case u != nil:
+		return u, nil
 	}
-	return p, bad
+	var bad *refusal
+	*own, bad = t.readUnit(rest, kind >= kinds)
+	if bad == nil && own.text == "" && t.fits(own, kind) != nil {
+		*own, bad = t.readUnit(rest, true) // the refusal needs its spelling
+	}
+	return own, bad
 }
 
 // fits checks that a unit measures the kind, and says so the right way.
-func (t *table) fits(u *Unit, kind Kind) refusal {
+func (t *table) fits(u *Unit, kind Kind) *refusal {
 	if kind >= kinds || u.dimension != kindTable[kind].dimension {
 		return t.mismatch(u, kind)
 	}
@@ -141,24 +150,24 @@ func (t *table) fits(u *Unit, kind Kind) refusal {
 		if u.basis == Plain {
 			return t.basisNeeded(u)
 		}
-		return refusal{}
+		return nil
 	case Temperature:
 		if u.role == difference {
-			return refusal{code: CodeTemperatureDifference, reason: "a difference, where a temperature belongs; write it as a point"}
+			return &refusal{code: CodeTemperatureDifference, reason: "a difference, where a temperature belongs; write it as a point"}
 		}
-		return refusal{}
+		return nil
 	case ReferenceVolumeFlow:
-		return refusal{}
+		return nil
 	}
 	switch {
 	case u.basis != Plain:
-		return refusal{code: CodePressureBasis, reason: "a pressure difference takes a plain unit such as kPa, bar or psi, neither absolute nor gauge"}
+		return &refusal{code: CodePressureBasis, reason: "a pressure difference takes a plain unit such as kPa, bar or psi, neither absolute nor gauge"}
 	case u.role == point:
-		return refusal{code: CodeTemperatureDifference, reason: "a point on the scale, where a difference belongs; write K or " + u.text + "_diff"}
+		return &refusal{code: CodeTemperatureDifference, reason: "a point on the scale, where a difference belongs; write K or " + u.text + "_diff"}
 	case u.reference.Given():
-		return refusal{code: CodeReferenceConditions, reason: "stated at reference conditions, where " + kind.words() + " belongs; give reference_volume_flow, or the value at the actual state"}
+		return &refusal{code: CodeReferenceConditions, reason: "stated at reference conditions, where " + kind.words() + " belongs; give reference_volume_flow, or the value at the actual state"}
 	}
-	return refusal{}
+	return nil
 }
 
 // trimBlanks cuts blanks of any width at both ends.

@@ -39,7 +39,7 @@ type refusal struct {
 }
 
 // about makes the error that a caller sees.
-func (r refusal) about(text string, kind Kind) *Error {
+func (r *refusal) about(text string, kind Kind) *Error {
 	detail := shown(text) + ": " + r.reason
 	if r.code == CodeWrongDimension && readsLeftToRight(text) {
 		detail += "; a/b.c is read as (a/b).c, so write a/(b.c) where that is meant"
@@ -75,42 +75,42 @@ func shown(text string) string {
 }
 
 // noNumber explains a text that does not begin with a JSON number.
-func noNumber(body string) refusal {
+func noNumber(body string) *refusal {
 	bare := strings.TrimLeft(body, "+-")
 	lower := strings.ToLower(bare)
 	switch {
 	case body == "":
-		return refusal{code: CodeBlank, reason: "blank, where a number belongs"}
+		return &refusal{code: CodeBlank, reason: "blank, where a number belongs"}
 	case strings.HasPrefix(lower, "nan"):
-		return refusal{code: CodeNotANumber, reason: "NaN is not a number"}
+		return &refusal{code: CodeNotANumber, reason: "NaN is not a number"}
 	case strings.HasPrefix(lower, "inf") || strings.HasPrefix(bare, "∞"):
-		return refusal{code: CodeNotFinite, reason: "an infinity is no value"}
+		return &refusal{code: CodeNotFinite, reason: "an infinity is no value"}
 	case strings.HasPrefix(body, "−") || strings.HasPrefix(body, "–"):
 		_, rest, _ := strings.Cut(body, body[:3])
-		return refusal{code: CodeNotANumber, reason: "a typographic minus sign; write -" + shown(rest)}
+		return &refusal{code: CodeNotANumber, reason: "a typographic minus sign; write -" + shown(rest)}
 	case len(bare) > 1 && bare[0] == '.' && isDigit(bare[1]):
-		return refusal{code: CodeNotANumber, reason: "a digit must stand before the point; write 0" + shown(bare)}
+		return &refusal{code: CodeNotANumber, reason: "a digit must stand before the point; write 0" + shown(bare)}
 	case body[0] == '+' && bare != "" && isDigit(bare[0]):
-		return refusal{code: CodeNotANumber, reason: "a number has no plus sign; write " + shown(bare)}
+		return &refusal{code: CodeNotANumber, reason: "a number has no plus sign; write " + shown(bare)}
 	}
-	return refusal{code: CodeNotANumber, reason: "does not begin with a number"}
+	return &refusal{code: CodeNotANumber, reason: "does not begin with a number"}
 }
 
 // badContinuation explains what follows a number and makes another number of
 // it in some program's eyes: 0,4 007 1_000 0x10 1 000 1'000 5.
-func badContinuation(body string, end int) refusal {
+func badContinuation(body string, end int) *refusal {
 	rest := body[end:]
 	if rest == "" {
-		return refusal{}
+		return nil
 	}
-	no := func(reason string) refusal { return refusal{code: CodeNotANumber, reason: reason} }
+	no := func(reason string) *refusal { return &refusal{code: CodeNotANumber, reason: reason} }
 	next := byte(0)
 	if len(rest) > 1 {
 		next = rest[1]
 	}
 	switch c := rest[0]; {
 	case c == ',':
-		return refusal{code: CodeDecimalComma, reason: commaAdvice(body, end)}
+		return &refusal{code: CodeDecimalComma, reason: commaAdvice(body, end)}
 	case c == '_':
 		return no("a number has no underscores")
 	case isDigit(c):
@@ -122,12 +122,12 @@ func badContinuation(body string, end int) refusal {
 	case (c == '\'' || strings.HasPrefix(rest, "’")) && isDigit(rest[len(rest)-len(strings.TrimLeft(rest, "'’"))%max(len(rest), 1)]):
 		return no("a number has no thousands marks")
 	case !isDigit(next) && next != 0 && c > ' ' && c < 0x80:
-		return refusal{}
+		return nil
 	}
 	if digits := trimBlanks(rest); digits != rest && startsWithDigits(digits) {
 		return no("a blank stands between digits; write the number in one piece")
 	}
-	return refusal{}
+	return nil
 }
 
 // startsWithDigits finds digits where a unit belongs, but for 1/s and 10*3.
@@ -156,38 +156,42 @@ func commaAdvice(body string, end int) string {
 
 // mismatch explains a unit of another dimension, with the advice of the table
 // where somebody usually means something.
-func (t *table) mismatch(u *Unit, kind Kind) refusal {
+func (t *table) mismatch(u *Unit, kind Kind) *refusal {
 	if a, known := t.advice[adviceKey{u.text, kind.Name()}]; known {
-		return refusal{code: a.code, reason: a.text}
+		return &refusal{code: a.code, reason: a.text}
 	}
 	is := "is " + kindOf(u).words()
 	if kindOf(u) == Other {
 		is = "measures " + u.dimension.String()
 	}
-	return refusal{code: CodeWrongDimension, reason: u.text + " " + is + ", where " + kind.words() + " belongs"}
+	return &refusal{code: CodeWrongDimension, reason: u.text + " " + is + ", where " + kind.words() + " belongs"}
 }
 
-func (t *table) basisNeeded(u *Unit) refusal {
+func (t *table) basisNeeded(u *Unit) *refusal {
 	text := u.text
-	return refusal{code: CodePressureBasis,
+	return &refusal{code: CodePressureBasis,
 		reason: "absolute or gauge? say " + t.basisName(text, Absolute) + " or " + t.basisName(text, Gauge)}
 }
 
 // refused finds a text that stands in the table of advice as no unit.
-func (t *table) refused(text string) (refusal, bool) {
+func (t *table) refused(text string) *refusal {
 	a, known := t.advice[adviceKey{text: text}]
 	if !known {
-		return refusal{}, false
+		return nil
 	}
-	return refusal{code: a.code, reason: text + " is not read: " + a.text}, true
+	return &refusal{code: a.code, reason: text + " is not read; " + a.text}
 }
 
-// explain turns the unknown name inside an expression into advice.
-func (t *table) explain(bad refusal) refusal {
+// explain turns a refusal of the grammar into advice, where the table has some
+// for the whole text or for the unknown name inside it.
+func (t *table) explain(text string, bad *refusal) *refusal {
+	if advised := t.refused(text); advised != nil {
+		return advised
+	}
 	if bad.code != CodeUnknownUnit || bad.symbol == "" {
 		return bad
 	}
-	if advised, known := t.refused(bad.symbol); known {
+	if advised := t.refused(bad.symbol); advised != nil {
 		return advised
 	}
 	bad.reason = "unknown unit " + shown(bad.symbol)

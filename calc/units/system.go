@@ -46,7 +46,7 @@ func (t *table) loadSystems() {
 			if k == StatePressure && System(s) == SI {
 				u.basis = Absolute
 			}
-			if bad.code != "" || t.fits(&u, k).code != "" {
+			if bad != nil || t.fits(&u, k) != nil {
 				t.fault("is no unit of "+row.name, text)
 			}
 			t.systems[s][k] = u

@@ -76,6 +76,9 @@ func load() *table {
 		}
 	}
 	t.loadSystems()
+	for _, text := range common {
+		t.name(text, t.mustRead(text), false)
+	}
 	return t
 }
 
@@ -167,6 +170,23 @@ func (t *table) name(text string, u Unit, output bool) {
 	}
 }
 
+// common are the compounds that most requests are written in. They are read by
+// the grammar once, so that a reading is one look into a map.
+var common = [...]string{
+	"mm2", "cm2", "m2", "in2", "ft2", "m3", "cm3", "ft3", "m3/s", "m3/h", "m3/min", "m3/d", "L/s", "L/min", "L/h", "gal_us/min", "ft3/min", "ft3/s",
+	"kg/s", "kg/h", "g/s", "t/h", "lb/h", "lb/s", "m/s", "mm/s", "cm/s", "km/h", "ft/s", "ft/min", "m/s2", "ft/s2", "Nm3/h", "Sm3/h", "mol/s", "kmol/h",
+	"Pa/m", "kPa/m", "mbar/m", "bar/km", "psi/ft", "mmH2O/m", "N/m2", "N/mm2", "kgf/cm2", "lbf/in2", "lbf/ft2", "kg/m3", "g/cm3", "kg/L", "lb/ft3",
+	"Pa.s", "mPa.s", "uPa.s", "kg/(m.s)", "lb/(ft.s)", "m2/s", "mm2/s", "cm2/s", "ft2/s", "kg/mol", "g/mol", "kg/kmol", "J/(kg.K)", "kJ/kg", "W/(m.K)", "1/s",
+}
+
+func (t *table) mustRead(text string) Unit {
+	u, bad := t.readUnit(text, true)
+	if bad != nil {
+		t.fault("is no unit", text)
+	}
+	return u
+}
+
 // prefix is an SI prefix; a spelling of it other than its own symbol is read only.
 type prefix struct {
 	spelled, symbol string
@@ -214,7 +234,7 @@ func powerOfTen(n int) *big.Rat {
 // must not take a name that means something already.
 func (t *table) spelling(text, unit string) {
 	u, bad := t.readUnit(unit, true)
-	if bad.code != "" {
+	if bad != nil {
 		t.fault("means no unit: "+unit, text)
 		return
 	}
