@@ -31,7 +31,7 @@ type table struct {
 // Row is one row of units.csv, for the catalogue.
 type Row struct {
 	Unit   Unit
-	UCUM   string
+	UCUM   []string // codes with the same meaning
 	Source string
 	Note   string
 }
@@ -59,7 +59,9 @@ func load() *table {
 		exact[i] = t.readRow(r)
 	}
 	for i, r := range rows {
-		t.name(t.rows[i].UCUM, t.rows[i].Unit, false)
+		for _, code := range t.rows[i].UCUM {
+			t.name(code, t.rows[i].Unit, false)
+		}
 		if r[5] == "si" {
 			t.prefixRow(i, exact[i], ucumPrefixes[:])
 		}
@@ -119,7 +121,7 @@ func (t *table) readRow(r []string) *big.Rat {
 	default:
 		t.fault("unknown basis "+r[6], r[0])
 	}
-	t.rows = append(t.rows, Row{Unit: u, UCUM: r[9], Source: r[10], Note: r[11]})
+	t.rows = append(t.rows, Row{Unit: u, UCUM: strings.Fields(r[9]), Source: r[10], Note: r[11]})
 	t.name(u.text, u, true)
 	return factor
 }
@@ -216,8 +218,8 @@ func (t *table) prefixRow(i int, factor *big.Rat, prefixes []prefix) {
 			continue
 		}
 		t.name(p.spelled+row.Unit.text, u, p.spelled == p.symbol)
-		if row.UCUM != row.Unit.text && row.UCUM != "" {
-			t.name(p.spelled+row.UCUM, u, false)
+		for _, code := range row.UCUM {
+			t.name(p.spelled+code, u, false)
 		}
 	}
 }
