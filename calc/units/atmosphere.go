@@ -7,8 +7,8 @@ import (
 )
 
 // The standard atmosphere of ISO 2533:1975: values at sea level and the layers
-// up to 32 km by geopotential height (from memory; the same as the US Standard
-// Atmosphere 1976 up to there).
+// up to 32 km by geopotential height (from memory). The US Standard Atmosphere
+// 1976 has the same layers and 287.05307 for the gas constant: 2e-6 apart.
 const (
 	earthRadius     = 6356766.0 // m, nominal, for the geopotential height
 	seaLevelGravity = 9.80665   // m/s2
