@@ -58,6 +58,8 @@ type Request struct {
 	InletPressure  Number
 	OutletPressure Number
 	Site           Site
+
+	decoder decoder // its memory is used again by the next Read
 }
 
 // Tag is free text that a list carries along.
@@ -84,6 +86,7 @@ const maxDims = 6
 type ShapeSpec struct {
 	Name   string
 	Fields []FieldSpec
+	Depth  bool // it can hold a liquid with a free surface
 	// Build makes the shape from a section whose fields have been read. It is
 	// nil for the pipe, whose names the service resolves first.
 	Build func(*Section) section.Shape
@@ -168,10 +171,4 @@ func (r *Refusal) Error() string {
 	}
 	v := r.Violations[0]
 	return v.Pointer + v.Parameter + ": " + v.Detail
-}
-
-// Read reads one JSON request for the door. req is overwritten; it may be used
-// again, so that a busy server does not allocate. A refusal is a *Refusal.
-func Read(body []byte, door Door, req *Request) error {
-	return &Refusal{Malformed: true}
 }
