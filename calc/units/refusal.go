@@ -104,10 +104,6 @@ func badContinuation(body string, end int) *refusal {
 		return nil
 	}
 	no := func(reason string) *refusal { return &refusal{code: CodeNotANumber, reason: reason} }
-	next := byte(0)
-	if len(rest) > 1 {
-		next = rest[1]
-	}
 	switch c := rest[0]; {
 	case c == ',':
 		return &refusal{code: CodeDecimalComma, reason: commaAdvice(body, end)}
@@ -119,10 +115,9 @@ func badContinuation(body string, end int) *refusal {
 		return no("a hexadecimal number is not read")
 	case c == '.':
 		return no("a number has one point, with a digit behind it")
-	case (c == '\'' || strings.HasPrefix(rest, "’")) && isDigit(rest[len(rest)-len(strings.TrimLeft(rest, "'’"))%max(len(rest), 1)]):
+	}
+	if marked := strings.TrimLeft(rest, "'’"); marked != rest && marked != "" && isDigit(marked[0]) {
 		return no("a number has no thousands marks")
-	case !isDigit(next) && next != 0 && c > ' ' && c < 0x80:
-		return nil
 	}
 	if digits := trimBlanks(rest); digits != rest && startsWithDigits(digits) {
 		return no("a blank stands between digits; write the number in one piece")
