@@ -1,0 +1,90 @@
+// Package answer holds what a calculation answers and writes it. One table of
+// leaf fields serves every form: blocks in JSON now, flat rows, columns and
+// single cells by the same names.
+package answer
+
+import (
+	"borewright/calc/segment"
+	"borewright/calc/units"
+)
+
+// Block is a part of an answer.
+type Block uint8
+
+// The blocks, in the order in which answers show them.
+const (
+	SectionBlock Block = iota
+	FluidBlock
+	FlowBlock
+	RegimeBlock
+	FrictionBlock
+	PressureBlock
+	blocks
+)
+
+// String is the name of the block in the contract.
+func (b Block) String() string {
+	return [...]string{"section", "fluid", "flow", "regime", "friction", "pressure"}[b]
+}
+
+// Level of a note.
+type Level uint8
+
+// The levels of the contract.
+const (
+	Info Level = iota
+	Caution
+	Limit
+)
+
+// String is the name of the level in the contract.
+func (l Level) String() string { return [...]string{"info", "caution", "limit"}[l] }
+
+// Note is something that a reader of the answer must know.
+type Note struct {
+	Code    string
+	Level   Level
+	Text    string
+	Source  string // "" for none
+	Pointer string // "" for none
+}
+
+// Engine tells what calculated.
+type Engine struct {
+	Version        string
+	MethodRevision int
+	Platform       string
+}
+
+// Answer is one calculation, with everything that is told about it.
+type Answer struct {
+	Last        Block // the last block of the door that was asked
+	ID, Title   string
+	Result      segment.Result
+	Regime      string // where the limits of the regimes come from
+	Notes       []Note
+	Engine      Engine
+	Fingerprint [32]byte
+}
+
+// Field is one numeric leaf of an answer.
+type Field struct {
+	Name  string
+	Block Block
+	Kind  units.Kind
+	value func(*segment.Result) (float64, bool)
+}
+
+// Value is the number of the leaf in SI, and whether it has a meaning here.
+func (f *Field) Value(a *Answer) (float64, bool) { return f.value(&a.Result) }
+
+// Text is one leaf of an answer that is no number.
+type Text struct {
+	Name  string
+	Block Block
+	list  bool
+	value func(*Answer) []string // nothing: null
+}
+
+// Values are the texts of the leaf; none means that it has no meaning here.
+func (t *Text) Values(a *Answer) []string { return t.value(a) }
