@@ -338,8 +338,8 @@ func (p *parser) leftOver() *refusal {
 	if p.text[p.pos-1] == ' ' {
 		left := strings.TrimRight(p.text[:p.pos], " ")
 		if _, bad := (&table{units: p.names}).readUnit(p.text[p.pos:], false); bad == nil {
-			return p.malformed("a blank is no product; for a product write " + left + "." + p.text[p.pos:])
+			return p.malformed("a blank is no product; for a product write " + shown(left+"."+p.text[p.pos:]))
 		}
 	}
-	return p.malformed(strconv.Quote(p.text[p.pos:]) + " follows a complete unit")
+	return p.malformed(quoted(p.text[p.pos:]) + " follows a complete unit")
 }

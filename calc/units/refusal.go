@@ -74,6 +74,14 @@ func shown(text string) string {
 	return body
 }
 
+// quoted is a part of a text in quotation marks.
+func quoted(part string) string {
+	if text := shown(part); text != "" && text[0] != '"' {
+		return `"` + text + `"`
+	}
+	return shown(part)
+}
+
 // noNumber explains a text that does not begin with a JSON number.
 func noNumber(body string) *refusal {
 	bare := strings.TrimLeft(body, "+-")

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"math"
 	"strconv"
+	"strings"
 	"testing"
 
 	"borewright/calc/units"
@@ -17,10 +18,18 @@ func unitTexts() []string {
 	for _, r := range units.Rows() {
 		u := r.Unit
 		if _, err := units.ParseUnit(u.String() + ".m"); err == nil && !u.Reference().Given() {
-			list = append(list, u.String())
+			list = append(list, grouped(u.String()))
 		}
 	}
 	return list
+}
+
+// grouped keeps a name that holds a quotient (psi/100ft) together in a compound.
+func grouped(name string) string {
+	if strings.Contains(name, "/") {
+		return "(" + name + ")"
+	}
+	return name
 }
 
 func TestOutputSpellingsAreReadBack(t *testing.T) {
