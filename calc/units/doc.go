@@ -24,7 +24,7 @@
 //     273.15 K and 100000 Pa, scf at 60 degF and 14.696 psi. M alone before a
 //     customary unit is refused (thousand or million), except Mgal_us.
 //   - A valid UCUM code keeps its meaning (m[Hg], cal, mph), except the names
-//     at, ft, kn, TR, which the trade has taken, and mol, which is the SI unit
+//     at, ft, TR, which the trade has taken, and mol, which is the SI unit
 //     and not a number. Logarithmic and arbitrary units of UCUM are refused, and
 //     its values of measured constants are replaced by the exact ones of the SI.
 //   - rad is kept apart from 1, so that an angle is never read as a ratio.

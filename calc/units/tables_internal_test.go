@@ -1,6 +1,7 @@
 package units
 
 import (
+	"slices"
 	"strings"
 	"testing"
 )
@@ -124,6 +125,37 @@ func TestEveryNameHasAnOutputSpelling(t *testing.T) {
 	for _, r := range table.records(spellingsCSV) {
 		if u := table.units[r[0]]; u != nil && u.text == r[0] {
 			t.Errorf("the spelling %q is an output", r[0])
+		}
+	}
+}
+
+// takenFromUCUM are names of the trade that shadow a code of UCUM with a prefix.
+var takenFromUCUM = map[string]string{"at": "attotonne", "ft": "femtotonne", "TR": "teraroentgen"}
+
+func TestNamesShadowNoOtherUCUMCode(t *testing.T) {
+	table := tables()
+	codes := map[string]bool{}
+	for i, r := range table.records(unitsCSV) {
+		for _, code := range table.rows[i].UCUM {
+			for _, p := range ucumPrefixes {
+				if r[5] == "si" {
+					codes[p.spelled+code] = true
+				}
+			}
+		}
+	}
+	shadowed := map[string]bool{}
+	for _, r := range table.rows {
+		if codes[r.Unit.text] && !slices.Contains(r.UCUM, r.Unit.text) {
+			shadowed[r.Unit.text] = true
+			if takenFromUCUM[r.Unit.text] == "" {
+				t.Errorf("%s is a code of UCUM and means something else here", r.Unit.text)
+			}
+		}
+	}
+	for name := range takenFromUCUM {
+		if !shadowed[name] {
+			t.Errorf("%s shadows nothing", name)
 		}
 	}
 }
