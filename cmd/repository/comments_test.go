@@ -19,6 +19,8 @@ var labels = []string{"Equation:", "Symbols:", "Validity:", "Source:", "Accuracy
 // calculate nothing: they read a table or a text. Each with the reason.
 var notCalculations = map[string]string{
 	"calc/input.go: Input.Check":            "compares one number with its stated bound",
+	"calc/catalog/pipes.go: PipeSize":       "looks a row up in a table",
+	"calc/catalog/pipes.go: PipeOutside":    "looks a row up in a table",
 	"calc/units/ascii.go: UnitFromASCII":    "reads or converts a text by the table of units; no law of its own",
 	"calc/units/quantity.go: Parse":         "reads or converts a text by the table of units; no law of its own",
 	"calc/units/quantity.go: ParseIn":       "reads or converts a text by the table of units; no law of its own",
