@@ -3,21 +3,139 @@
 // fingerprint.
 package service
 
-import "borewright/service/document"
+import (
+	"errors"
+	"fmt"
+	"runtime"
+	"sync"
+
+	"borewright/calc"
+	"borewright/calc/segment"
+	"borewright/calc/units"
+	"borewright/service/answer"
+	"borewright/service/document"
+)
+
+// Version of the program, and MethodRevision, which rises whenever a published
+// number moves: equal revisions give equal numbers on one platform.
+const (
+	Version        = "0.1.0"
+	MethodRevision = 1
+)
+
+// ErrCalculation is our fault: accepted input that could not be calculated.
+var ErrCalculation = errors.New("the calculation failed on accepted input")
 
 // Service answers requests. It is safe for concurrent use.
-type Service struct{}
+type Service struct {
+	engine answer.Engine
+	desks  sync.Pool // of *desk
+}
+
+// desk is what one request needs, kept for the next one.
+type desk struct {
+	work   work
+	answer answer.Answer
+}
 
 // New returns a service.
-func New() *Service { return &Service{} }
+func New() *Service {
+	return &Service{engine: answer.Engine{Version: Version, MethodRevision: MethodRevision, Platform: runtime.GOOS + "/" + runtime.GOARCH}}
+}
 
 // AnswerJSON reads one JSON request for the door and appends its answer to dst.
 // The error is a *document.Refusal where the request is to blame; anything else
 // is our fault.
 func (s *Service) AnswerJSON(dst, body []byte, door document.Door) ([]byte, error) {
-	var req document.Request
-	if err := document.Read(body, door, &req); err != nil {
+	d, ok := s.desks.Get().(*desk)
+	if !ok {
+		d = &desk{}
+	}
+	defer s.desks.Put(d)
+	if err := document.Read(body, door, &d.work.req); err != nil {
 		return dst, err
 	}
-	return dst, &document.Refusal{}
+	if err := s.calculate(&d.work, &d.answer); err != nil {
+		return dst, err
+	}
+	return answer.AppendJSON(dst, &d.answer)
+}
+
+// Calculate answers a request that has been read.
+func (s *Service) Calculate(req *document.Request, out *answer.Answer) error {
+	return s.calculate(&work{req: *req}, out)
+}
+
+func (s *Service) calculate(w *work, out *answer.Answer) error {
+	notes := out.Notes[:0]
+	*out = answer.Answer{Last: lastBlock[w.req.Door], ID: w.req.ID, Title: w.req.Title, Engine: s.engine, Notes: notes}
+	if err := w.resolve(); err != nil {
+		return err
+	}
+	if err := w.run(&out.Result); err != nil {
+		return w.blame(err)
+	}
+	out.Regime = w.regimeBasis(&out.Result)
+	w.notes(out)
+	w.fingerprint(out)
+	return nil
+}
+
+var lastBlock = [...]answer.Block{
+	document.SectionDoor: answer.SectionBlock, document.RegimeDoor: answer.RegimeBlock,
+	document.FrictionDoor: answer.FrictionBlock, document.SegmentDoor: answer.PressureBlock,
+}
+
+// run asks calc as far as the door goes.
+func (w *work) run(out *segment.Result) error {
+	switch w.req.Door {
+	case document.RegimeDoor:
+		return segment.Regime(&w.in, out)
+	case document.FrictionDoor:
+		return segment.Friction(&w.in, out)
+	case document.SegmentDoor:
+		return segment.PressureDrop(&w.in, out)
+	}
+	*out = segment.Result{}
+	var err error
+	out.Section, err = w.in.Section.Of()
+	return err
+}
+
+// blame tells a fault of the request from one of ours.
+func (w *work) blame(err error) error {
+	if errors.Is(err, calc.ErrNoConvergence) || errors.Is(err, calc.ErrNonFinite) {
+		return fmt.Errorf("%w: %w", ErrCalculation, err)
+	}
+	w.fault(err, "")
+	return w.refusal()
+}
+
+// Conversion is a quantity in another unit.
+type Conversion struct {
+	Value float64
+	Unit  string
+	Kind  string
+}
+
+// Convert gives a quantity in another unit. The error is a *document.Refusal
+// that names the parameter.
+func (s *Service) Convert(quantity, to string) (Conversion, error) {
+	if _, err := units.ParseUnit(to); err != nil {
+		return Conversion{}, parameterRefusal("to", err)
+	}
+	c, err := units.Convert(quantity, to)
+	if err != nil {
+		return Conversion{}, parameterRefusal("quantity", err)
+	}
+	return Conversion{Value: c.Value, Unit: c.Unit, Kind: c.Kind.Name()}, nil
+}
+
+func parameterRefusal(name string, err error) error {
+	v := document.Violation{Parameter: name, Code: "invalid_quantity", Detail: err.Error()}
+	var u *units.Error
+	if errors.As(err, &u) {
+		v.Code = u.Code
+	}
+	return &document.Refusal{Violations: []document.Violation{v}}
 }
