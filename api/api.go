@@ -1,5 +1,3 @@
-//go:build doors
-
 // Package api is the HTTP face of Borewright: routes, problem documents, limits
 // and the judge beside the strict reader. It stands on the service, knows no
 // engineering, and is the only package that knows status codes and echo.

@@ -1,5 +1,3 @@
-//go:build doors
-
 package api
 
 import (

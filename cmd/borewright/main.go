@@ -1,5 +1,3 @@
-//go:build doors
-
 // Command borewright answers what pressure a line takes, as a service and on the
 // command line.
 package main
