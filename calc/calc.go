@@ -9,7 +9,6 @@ package calc
 
 import (
 	"errors"
-	"math"
 	"strconv"
 )
 
@@ -64,5 +63,5 @@ type Optional struct {
 // Some is a number that has a meaning here.
 func Some(v float64) Optional { return Optional{Value: v, Valid: true} }
 
-// Finite reports whether v is neither NaN nor infinite.
-func Finite(v float64) bool { return !math.IsNaN(v) && !math.IsInf(v, 0) }
+// Finite reports whether v is neither NaN nor infinite: only then is v - v zero.
+func Finite(v float64) bool { return v-v == 0 }

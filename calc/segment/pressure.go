@@ -261,13 +261,14 @@ func (out *Result) compressibility(in *Input) error {
 	return nil
 }
 
-// finite catches an overflow on accepted input.
+// finite catches an overflow on accepted input. One sum is enough: it is finite
+// only if each of its terms is, and none can be large enough to overflow it.
 func (out *Result) finite() error {
-	p := &out.Pressure
-	for _, v := range [...]float64{p.FrictionDrop, p.TotalPressureLoss, p.HeadLoss, p.FrictionGradient, p.StaticPressureDrop.Value, p.FluidPower.Value, p.FrictionSlope.Value, p.InletPressure.Value, p.OutletPressure.Value, out.Friction.WallShear, out.Friction.RoughnessReynolds} {
-		if !calc.Finite(v) {
-			return &calc.Error{Kind: calc.ErrNonFinite, Quantity: "static_pressure_drop", Value: v}
-		}
+	p, f := &out.Pressure, &out.Friction
+	sum := p.FrictionDrop + p.TotalPressureLoss + p.HeadLoss + p.FrictionGradient + p.StaticPressureDrop.Value + p.FluidPower.Value +
+		p.FrictionSlope.Value + p.InletPressure.Value + p.OutletPressure.Value + f.WallShear + f.RoughnessReynolds
+	if calc.Finite(sum) {
+		return nil
 	}
-	return nil
+	return &calc.Error{Kind: calc.ErrNonFinite, Quantity: "static_pressure_drop", Value: sum}
 }

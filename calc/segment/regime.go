@@ -28,7 +28,8 @@ import (
 //
 // Errors: those of its parts.
 func Regime(in *Input, out *Result) error {
-	*out = Result{Fluid: in.Fluid}
+	*out = Result{}
+	out.Fluid = in.Fluid
 	var err error
 	if out.Section, err = in.Section.Of(); err != nil {
 		return err
