@@ -398,7 +398,7 @@ type Code = string
 
 // ConversionAnswer A quantity in another unit.
 //
-// Example: {"quantity_kind":"volume_flow","unit":"m3/h","value":27.2549605968}
+// Example: {"quantity_kind":"volume_flow","unit":"m3/h","value":27.2549648448}
 type ConversionAnswer struct {
 	// QuantityKind What is measured.
 	//

@@ -3,21 +3,14 @@ package main
 import (
 	"fmt"
 	"runtime"
-	"runtime/debug"
+
+	"borewright/service"
 )
 
 func printVersion(p *process, args []string) int {
 	if len(args) > 0 {
 		return p.usage("version takes no arguments")
 	}
-	fmt.Fprintf(p.stdout, "borewright %s, %s, %s/%s\n", buildVersion(), runtime.Version(), runtime.GOOS, runtime.GOARCH)
+	fmt.Fprintf(p.stdout, "borewright %s, method revision %d, %s, %s/%s\n", service.Version, service.MethodRevision, runtime.Version(), runtime.GOOS, runtime.GOARCH)
 	return exitOK
-}
-
-// buildVersion is the module's version, or "(devel)" for a build from a checkout.
-func buildVersion() string {
-	if info, ok := debug.ReadBuildInfo(); ok && info.Main.Version != "" {
-		return info.Main.Version
-	}
-	return "(unknown)"
 }
