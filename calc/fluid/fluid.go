@@ -21,5 +21,8 @@ type Properties struct {
 	Phase              Phase
 	VapourPressure     calc.Optional // absolute [Pa]
 	SoundSpeed         calc.Optional // [m/s]
+	HeatCapacityRatio  calc.Optional // of a gas, cp/cv or its isentropic exponent [1]
+	Temperature        calc.Optional // of the state, where it is known [K]
+	Pressure           calc.Optional // of the state, absolute, where it is known [Pa]
 	Source             string        // where the values come from ("given" for posted ones)
 }

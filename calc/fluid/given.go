@@ -30,20 +30,22 @@ const (
 //   - ρ: density [kg/m³]
 //
 // Validity: any Newtonian fluid within the bounds; without a phase a density
-// above 100 kg/m³ is a liquid, below 50 kg/m³ a gas.
+// above 100 kg/m³ is a liquid, below 50 kg/m³ a gas, and from 50 to 100 kg/m³, both
+// included, it must be said. A phase that is said stands at any density.
 //
-// Source: definition.
+// Source: definition; the densities common practice.
 //
 // Accuracy: 1 ulp.
 //
-// Errors: [calc.ErrDomain] if a value is out of bounds, if not exactly one
-// viscosity is given, or if the density leaves the phase open.
+// Errors: [calc.ErrDomain] if a value is out of bounds, the other viscosity that
+// follows from it included, if not exactly one viscosity is given, or if the
+// density leaves the phase open.
 func Given(in GivenInput) (Properties, error) {
 	if err := calc.Density.Check(in.Density); err != nil {
 		return Properties{}, err
 	}
-	p := Properties{Density: in.Density, Phase: in.Phase, VapourPressure: in.VapourPressure, Source: "given"}
-	if err := p.viscosities(in); err != nil {
+	p := Properties{Density: in.Density, VapourPressure: in.VapourPressure, Source: "given"}
+	if err := p.viscosities(&in); err != nil {
 		return Properties{}, err
 	}
 	if in.VapourPressure.Valid {
@@ -51,43 +53,66 @@ func Given(in GivenInput) (Properties, error) {
 			return Properties{}, err
 		}
 	}
-	if p.Phase != 0 {
-		return p, nil
-	}
-	switch {
-	case in.Density > liquidAbove:
-		p.Phase = Liquid
-	case in.Density < gasBelow:
-		p.Phase = Gas
-	default:
-		return Properties{}, &calc.Error{Kind: calc.ErrDomain, Quantity: "phase",
-			Detail: "between 50 and 100 kg/m3 a fluid may be a liquid or a gas; say which with phase"}
+	var err error
+	if p.Phase, err = in.phase(); err != nil {
+		return Properties{}, err
 	}
 	return p, nil
 }
 
-func (p *Properties) viscosities(in GivenInput) error {
+// phase is the one that was said, or the one that the density leaves.
+func (in *GivenInput) phase() (Phase, error) {
 	switch {
-	case in.DynamicViscosity.Valid && in.KinematicViscosity.Valid:
-		return &calc.Error{Kind: calc.ErrDomain, Quantity: "kinematic_viscosity", Value: in.KinematicViscosity.Value,
-			Detail: "give dynamic_viscosity or kinematic_viscosity, not both"}
-	case in.DynamicViscosity.Valid:
-		if err := calc.DynamicViscosity.Check(in.DynamicViscosity.Value); err != nil {
-			return err
-		}
-		p.DynamicViscosity = in.DynamicViscosity.Value
-		p.KinematicViscosity = p.DynamicViscosity / p.Density
-	case in.KinematicViscosity.Valid:
-		if err := calc.KinematicViscosity.Check(in.KinematicViscosity.Value); err != nil {
-			return err
-		}
-		p.KinematicViscosity = in.KinematicViscosity.Value
-		p.DynamicViscosity = p.KinematicViscosity * p.Density
-	default:
-		return &calc.Error{Kind: calc.ErrDomain, Quantity: "dynamic_viscosity", Detail: "give dynamic_viscosity or kinematic_viscosity"}
+	case in.Phase == Liquid || in.Phase == Gas:
+		return in.Phase, nil
+	case in.Phase != 0:
+		return 0, &calc.Error{Kind: calc.ErrDomain, Quantity: "phase", Value: float64(in.Phase), Detail: "say liquid or gas"}
+	case in.Density > liquidAbove:
+		return Liquid, nil
+	case in.Density < gasBelow:
+		return Gas, nil
 	}
-	return calc.KinematicViscosity.Check(p.KinematicViscosity)
+	return 0, &calc.Error{Kind: calc.ErrDomain, Quantity: "phase",
+		Detail: "between 50 and 100 kg/m3 a fluid may be a liquid or a gas; say which with phase"}
 }
 
-// String is the name of the phase in the contract.
-func (p Phase) String() string { return [...]string{"", "liquid", "gas"}[p] }
+// viscosities sets both viscosities from the one that is given.
+func (p *Properties) viscosities(in *GivenInput) error {
+	dynamic, kinematic := in.DynamicViscosity, in.KinematicViscosity
+	switch {
+	case dynamic.Valid && kinematic.Valid:
+		return &calc.Error{Kind: calc.ErrDomain, Quantity: "kinematic_viscosity", Value: kinematic.Value,
+			Detail: "give dynamic_viscosity or kinematic_viscosity, not both"}
+	case dynamic.Valid:
+		p.DynamicViscosity, p.KinematicViscosity = dynamic.Value, dynamic.Value/p.Density
+		if err := calc.DynamicViscosity.Check(dynamic.Value); err != nil {
+			return err
+		}
+		return p.checkKinematic()
+	case kinematic.Valid:
+		p.DynamicViscosity, p.KinematicViscosity = kinematic.Value*p.Density, kinematic.Value
+		return calc.KinematicViscosity.Check(kinematic.Value)
+	}
+	return &calc.Error{Kind: calc.ErrDomain, Quantity: "dynamic_viscosity", Detail: "give dynamic_viscosity or kinematic_viscosity"}
+}
+
+// checkKinematic points at the viscosity that was given when the one that
+// follows from it is out of bounds.
+func (p *Properties) checkKinematic() error {
+	if b := calc.KinematicViscosity.Bound(); !b.Contains(p.KinematicViscosity) {
+		return &calc.Error{Kind: calc.ErrDomain, Quantity: "dynamic_viscosity", Value: p.DynamicViscosity, Min: b.Min * p.Density, Max: b.Max * p.Density,
+			Detail: "with this density the kinematic viscosity is outside 1e-15 to 1e12 m2/s"}
+	}
+	return nil
+}
+
+// String is the name of the phase in the contract; empty where it is none.
+func (p Phase) String() string {
+	switch p {
+	case Liquid:
+		return "liquid"
+	case Gas:
+		return "gas"
+	}
+	return ""
+}

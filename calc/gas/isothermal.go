@@ -1,0 +1,182 @@
+package gas
+
+import (
+	"math"
+
+	"borewright/calc"
+)
+
+// Isothermal returns the states at both ends of a line at constant temperature.
+//
+// Equation:
+//
+//	∫ (1 - a/y) / (a N + c y) dy from y2 to y1 = 1, y = p², a = G² Rs T, c = 2 g rise / (Rs T);
+//	without rise: p1² - p2² = G² Rs T (N + 2 ln(p1/p2))
+//
+// Symbols:
+//   - p: static absolute pressure, 1 at the inlet, 2 at the outlet [Pa]
+//   - G: mass flux [kg/(m² s)]
+//   - Rs: specific gas constant times compressibility factor [J/(kg K)]
+//   - T: temperature [K]
+//   - N: f L/D + ΣK, the coefficients spread over the length [1]
+//   - g: acceleration of gravity [m/s²]
+//   - rise: outlet level less inlet level [m]
+//
+// Validity: perfect gas, constant area and temperature, Mach number up to
+// 1/sqrt(γ), where isothermal flow chokes. The friction factor is constant along
+// the line, which is exact here: Reynolds number and viscosity do not change.
+//
+// Source: momentum balance of one-dimensional flow, e.g. Shapiro, The Dynamics
+// and Thermodynamics of Compressible Fluid Flow, vol. 1 (1953), chapter 6 (from
+// memory); integrated here in closed form with the weight of the gas.
+//
+// Accuracy: 1e-12, near choking (exit Mach number within 5 % of the limit) 1e-7;
+// testdata/gas/isothermal.csv.
+//
+// Errors: [calc.ErrDomain] for impossible input, [*ChokedError] if the flow
+// chokes before the outlet.
+func Isothermal(l Line, k Known) (Ends, error) {
+	if err := l.check(k); err != nil {
+		return Ends{}, err
+	}
+	s := l.isothermal(k.Temperature)
+	s.known, s.atOutlet = k.Pressure*k.Pressure, k.AtOutlet
+	if s.known < s.a {
+		return Ends{}, &ChokedError{}
+	}
+	difference, err := s.difference()
+	if err != nil {
+		return Ends{}, err
+	}
+	if k.AtOutlet {
+		in := math.Sqrt(s.known + difference)
+		return l.isothermalEnds(in, k.Pressure, k.Temperature, difference), nil
+	}
+	out := math.Sqrt(s.known - difference)
+	return l.isothermalEnds(k.Pressure, out, k.Temperature, difference), nil
+}
+
+func (l *Line) isothermalEnds(in, out, temperature, difference float64) Ends {
+	return Ends{In: l.stateAt(in, temperature), Out: l.stateAt(out, temperature), Drop: difference / (in + out)}
+}
+
+// isothermalLine is the integral in y = p², with d = y1 - y2 as its unknown.
+type isothermalLine struct {
+	a        float64 // G² Rs T: y where the flow chokes
+	n        float64 // resistance
+	c        float64 // 2 lift / (Rs T)
+	known    float64 // y at the known end
+	atOutlet bool
+}
+
+func (l *Line) isothermal(temperature float64) isothermalLine {
+	rt := l.Gas.SpecificConstant * temperature
+	return isothermalLine{a: l.MassFlux * l.MassFlux * rt, n: l.Resistance, c: 2 * l.Lift / rt}
+}
+
+// ends gives y1 and y2 for the difference d.
+func (s *isothermalLine) ends(d float64) (y1, y2 float64) {
+	if s.atOutlet {
+		return s.known + d, s.known
+	}
+	return s.known, s.known - d
+}
+
+// span is the part of the line over which y falls by d: 1 over all of it. The
+// logarithms are written so that neither a small weight of the gas nor a small
+// drop loses digits.
+func (s *isothermalLine) span(d float64) float64 {
+	b := s.a * s.n
+	_, y2 := s.ends(d)
+	logs := math.Log1p(d / y2)
+	if s.c == 0 {
+		return (d - s.a*logs) / b
+	}
+	lift := math.Log1p(s.c * d / (b + s.c*y2))
+	return lift/s.c - (s.a/b)*(logs-lift)
+}
+
+// slope is the derivative of span by d.
+func (s *isothermalLine) slope(d float64) float64 {
+	y1, y2 := s.ends(d)
+	y := y2
+	if s.atOutlet {
+		y = y1
+	}
+	return (1 - s.a/y) / (s.a*s.n + s.c*y)
+}
+
+// difference finds the d at which span is 1. Where the weight of the gas exceeds
+// the friction the pressure rises along the line and d is negative.
+func (s *isothermalLine) difference() (float64, error) {
+	f := func(d float64) float64 { return s.span(d) - 1 }
+	drive := s.a*s.n + s.c*s.known
+	if drive == 0 {
+		return 0, nil
+	}
+	far, err := s.farthest(drive, f)
+	if err != nil {
+		return 0, err
+	}
+	return bracketed(far, f, s.slope)
+}
+
+// farthest is a difference at which span is at least 1. On the choking side of
+// the line it is the end of the subsonic range, and the flow chokes if span
+// stays below 1 there; on the other side it is the balance of weight and
+// friction, or a pressure found by doubling.
+func (s *isothermalLine) farthest(drive float64, f func(float64) float64) (float64, error) {
+	towardsChoking := s.known - s.a // y falls to a
+	switch {
+	case drive > 0 && !s.atOutlet, drive < 0 && s.atOutlet:
+		far := towardsChoking
+		if s.atOutlet {
+			far = -far
+		}
+		if reach := s.span(far); reach < 1 {
+			return 0, &ChokedError{Resistance: s.n * reach}
+		}
+		return far, nil
+	case drive < 0: // downhill from the inlet: y rises to the balance
+		return s.known + s.a*s.n/s.c, nil
+	}
+	far := s.a * s.n
+	for f(far) < 0 {
+		far *= 4
+		if math.IsInf(far, 0) {
+			return 0, &calc.Error{Kind: calc.ErrNonFinite, Quantity: "inlet_pressure", Value: math.Sqrt(s.known)}
+		}
+	}
+	return far, nil
+}
+
+// bracketed finds the root of f between 0, where f is -1, and far, where it is
+// not negative: Newton's method inside a bracket that bisects when a step leaves it.
+func bracketed(far float64, f, slope func(float64) float64) (float64, error) {
+	lo, hi := 0.0, far
+	x := far / 2
+	if d := slope(0); d != 0 && calc.Finite(d) {
+		if first := 1 / d; first*(hi-first) > 0 {
+			x = first
+		}
+	}
+	last := math.Inf(1)
+	for range 200 {
+		v := f(x)
+		if v < 0 {
+			lo = x
+		} else {
+			hi = x
+		}
+		next := x - v/slope(x)
+		if !((next-lo)*(hi-next) >= 0) {
+			next = lo + (hi-lo)/2
+		}
+		step := math.Abs(next - x)
+		if step <= 4e-16*math.Abs(x) || step <= 1e-12*math.Abs(x) && step >= last {
+			return next, nil // the steps are down to rounding
+		}
+		last, x = step, next
+	}
+	return 0, &calc.Error{Kind: calc.ErrNoConvergence, Quantity: "outlet_pressure", Value: x}
+}
