@@ -8,5 +8,5 @@ type Item struct {
 	Count           float64
 	RatedDrop       float64 // [Pa] at the rated flow
 	RatedFlow       float64 // [m³/s]
-	Exponent        float64 // drop ~ flow^exponent
+	Exponent        float64 // drop ~ flow^exponent; 2 where the caller was told none
 }

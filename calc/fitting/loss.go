@@ -18,6 +18,7 @@ type Loss struct {
 	LossCoefficients float64 // Σ count · K
 	Coefficients     int     // entries given by a coefficient
 	CoefficientDrop  float64 // [Pa]
+	Gain             float64 // the part of CoefficientDrop by negative coefficients, 0 or negative [Pa]
 	ComponentDrop    float64 // [Pa]
 	Drop             float64 // the two together [Pa]
 }
@@ -51,35 +52,65 @@ func (e *ItemError) Unwrap() error { return e.Err }
 //
 // Validity: kinetic energy factor 1; a constant K for Reynolds numbers above
 // about 1e4 (common practice). A negative K (a straight run past a joining
-// branch) is allowed.
+// branch) is allowed. At rest nothing is lost, whatever the exponent.
 //
 // Source: definition of the loss coefficient; affinity of drop and flow, common practice.
 //
-// Accuracy: 1e-15; K itself is seldom known better than 10 to 30 % (common practice).
+// Accuracy: 1e-15 of the sum of the entries' magnitudes, and one rounding more an
+// entry; K itself is seldom known better than 10 to 30 % (common practice).
 //
-// Errors: an [*ItemError] around [calc.ErrDomain] for an entry out of bounds;
-// [calc.ErrNonFinite] on overflow.
+// Errors: an [*ItemError] around [calc.ErrDomain] for an entry out of bounds, or
+// around [calc.ErrRange] for a flow so far above the rated one that no drop can be
+// written; [calc.ErrDomain] for conditions that no flow has; [calc.ErrNonFinite] on
+// overflow.
 func LossOf(items []Item, c Conditions) (Loss, error) {
+	if err := c.check(); err != nil {
+		return Loss{}, err
+	}
 	var l Loss
-	head := c.Density * c.Velocity * c.Velocity / 2
+	var gains float64
 	for i := range items {
 		it := &items[i]
 		if err := it.check(); err != nil {
 			return Loss{}, &ItemError{i, err}
 		}
-		if it.ByRating {
-			l.ComponentDrop += it.Count * it.ratedDrop(c.VolumeFlow)
+		if !it.ByRating {
+			k := it.Count * it.LossCoefficient
+			l.Coefficients++
+			l.LossCoefficients += k
+			gains += min(k, 0)
 			continue
 		}
-		l.Coefficients++
-		l.LossCoefficients += it.Count * it.LossCoefficient
+		drop := it.Count * it.ratedDrop(c.VolumeFlow)
+		if !calc.Finite(drop) {
+			return Loss{}, &ItemError{i, it.farAboveRated()}
+		}
+		l.ComponentDrop += drop
 	}
-	l.CoefficientDrop = l.LossCoefficients * head
+	head := c.velocityHead()
+	l.CoefficientDrop, l.Gain = l.LossCoefficients*head, gains*head
 	l.Drop = l.CoefficientDrop + l.ComponentDrop
 	if !calc.Finite(l.Drop) {
 		return Loss{}, &calc.Error{Kind: calc.ErrNonFinite, Quantity: "fittings_drop", Value: l.Drop}
 	}
 	return l, nil
+}
+
+// velocityHead is ρ V²/2 [Pa].
+func (c *Conditions) velocityHead() float64 { return c.Density * c.Velocity * c.Velocity / 2 }
+
+// check refuses what did not come from a flow.
+func (c *Conditions) check() error {
+	if err := calc.Density.Check(c.Density); err != nil {
+		return err
+	}
+	if !(c.Velocity >= 0) || !calc.Finite(c.Velocity) {
+		return &calc.Error{Kind: calc.ErrDomain, Quantity: "velocity", Value: c.Velocity, Detail: "flow runs from inlet to outlet; for the other direction swap the ends"}
+	}
+	if !(c.VolumeFlow >= 0) || !calc.Finite(c.VolumeFlow) {
+		return &calc.Error{Kind: calc.ErrDomain, Quantity: "volume_flow", Value: c.VolumeFlow, Detail: "flow runs from inlet to outlet; for the other direction swap the ends"}
+	}
+	return nil
 }
 
 func (it *Item) check() error {
@@ -98,9 +129,14 @@ func (it *Item) check() error {
 	return calc.Exponent.Check(it.Exponent)
 }
 
-// ratedDrop is the drop of one component; without flow there is none.
+func (it *Item) farAboveRated() error {
+	return &calc.Error{Kind: calc.ErrRange, Quantity: "rated_flow", Value: it.RatedFlow,
+		Detail: "the flow is so far above the rated flow that the drop cannot be written; is rated_flow in the right unit?"}
+}
+
+// ratedDrop is the drop of one component, Δpr (q/qr)ⁿ [Pa]; without flow there is none.
 func (it *Item) ratedDrop(volumeFlow float64) float64 {
-	if volumeFlow == 0 {
+	if volumeFlow == 0 || it.RatedDrop == 0 {
 		return 0
 	}
 	ratio := volumeFlow / it.RatedFlow
