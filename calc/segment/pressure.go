@@ -6,24 +6,13 @@ import (
 	"borewright/calc/fluid"
 )
 
-// EndError tells at which end an error belongs.
-type EndError struct {
-	End string // "inlet" or "outlet"
-	Err error
-}
-
-func (e *EndError) Error() string { return e.End + ": " + e.Err.Error() }
-
-// Unwrap gives the error of the end.
-func (e *EndError) Unwrap() error { return e.Err }
-
 // PressureDrop fills the whole result.
 //
 // Equation:
 //
 //	Δpf = f L/Dh ρ V²/2, Δpt = Δpf + Δp of the fittings, Δpe = ρ g z,
 //	Δpa = ρ/2 (Vo² - Vi²), Δp = pi - po = Δpt + Δpe + Δpa,
-//	h = Δpt/(ρ g), W = (Δpt + Δpe) q
+//	h = Δpt/(ρ g), W = (Δpt + Δpe) q; with a free surface Sf = Δpf/(ρ g L), Sb = -z/L
 //
 // Symbols:
 //   - Δpf: friction drop [Pa]
@@ -43,11 +32,21 @@ func (e *EndError) Unwrap() error { return e.Err }
 //   - h: head loss, metres of the fluid [m]
 //   - W: fluid power [W]
 //   - q: volume flow [m³/s]
+//   - Sf: friction slope [1]
+//   - Sb: bed slope, falling in the direction of flow [1]
 //
 // Validity: steady flow of constant density, kinetic energy factor 1. With a
-// free surface the depth is given: friction slope instead of a static drop. A gas
-// given by its density is taken as incompressible, which a 10 % drop of absolute
-// pressure makes doubtful and 40 % or Mach number 0.3 wrong.
+// free surface the depth is given: friction slope instead of a static drop. Where
+// both regimes are possible the plain values are those of the larger friction. At
+// rest only the level counts. A gas given by its density is taken as
+// incompressible, which a 10 % drop of absolute pressure makes doubtful and more
+// than 40 %, or more than Mach number 0.3, wrong; both are judged only where the
+// pressure or the sound speed is known.
+//
+// The lowest pressure is that of a straight line between the two levels, at or
+// between its ends. The place of the fittings in the line is not known, so that it
+// is taken on the safe side: all losses at the inlet end, all gains at the outlet
+// end. Where both regimes are possible it is the lower one of the two.
 //
 // Source: Darcy-Weisbach and the extended Bernoulli equation, common practice.
 //
@@ -55,31 +54,36 @@ func (e *EndError) Unwrap() error { return e.Err }
 // magnitudes; testdata/segment/segment.csv. The law behind it about 5 %, loss
 // coefficients 10 to 30 % (common practice).
 //
-// Errors: those of its parts; [calc.ErrDomain] for a pressure given at both ends
-// or with a free surface; [calc.ErrRange] where a gas cannot be taken as
-// incompressible; an [*EndError] for the section of an end.
+// Errors: those of its parts; [calc.ErrDomain] for a pressure given at both ends,
+// a pressure or an end with a free surface, and a jet at the inlet; [calc.ErrRange]
+// where a gas cannot be taken as incompressible; a [*fitting.ItemError] for a
+// fitting and an [*EndError] for the section of an end; [calc.ErrNonFinite] on
+// overflow. With an error the result is empty.
 func PressureDrop(in *Input, out *Result) error {
+	err := in.pressureDrop(out)
+	if err != nil {
+		*out = Result{}
+	}
+	return err
+}
+
+func (in *Input) pressureDrop(out *Result) error {
 	if err := in.checkSegment(); err != nil {
 		return err
 	}
-	if err := Friction(in, out); err != nil {
+	if err := in.friction(out); err != nil {
 		return err
 	}
 	loss, err := fitting.LossOf(in.Fittings, fitting.Conditions{Density: in.Fluid.Density, Velocity: out.Flow.Velocity, VolumeFlow: out.Flow.VolumeFlow})
 	if err != nil {
 		return err
 	}
-	p := &out.Pressure
-	p.LossCoefficients, p.CoefficientDrop, p.ComponentDrop, p.FittingsDrop = loss.LossCoefficients, loss.CoefficientDrop, loss.ComponentDrop, loss.Drop
-	out.losses(in)
-	out.lossConditions(loss.Coefficients)
+	out.losses(in, &loss)
+	out.lossConditions(in, loss.Coefficients)
 	if out.Section.FreeSurface {
 		return out.openChannel(in)
 	}
-	if err := out.closedLine(in); err != nil {
-		return err
-	}
-	return out.finite()
+	return out.closedLine(in, loss.Gain)
 }
 
 func (in *Input) checkSegment() error {
@@ -93,6 +97,9 @@ func (in *Input) checkSegment() error {
 		if err := calc.Rise.Check(in.Rise.Value); err != nil {
 			return err
 		}
+	}
+	if err := in.checkEnds(); err != nil {
+		return err
 	}
 	return in.checkPressures()
 }
@@ -111,15 +118,10 @@ func (in *Input) checkPressures() error {
 	return nil
 }
 
-// frictionDrop is Darcy-Weisbach for a factor, [Pa].
-func (out *Result) frictionDrop(in *Input, factor float64) float64 {
-	v := out.Flow.Velocity
-	return factor * (in.Length / out.Section.HydraulicDiameter) * (in.Fluid.Density * v * v / 2)
-}
-
 // losses accounts the friction of both branches and what follows from the plain one.
-func (out *Result) losses(in *Input) {
+func (out *Result) losses(in *Input, loss *fitting.Loss) {
 	p := &out.Pressure
+	p.LossCoefficients, p.CoefficientDrop, p.ComponentDrop, p.FittingsDrop = loss.LossCoefficients, loss.CoefficientDrop, loss.ComponentDrop, loss.Drop
 	p.FrictionDrop = out.frictionDrop(in, out.Friction.Darcy.Value)
 	if out.Friction.IfLaminar.Valid {
 		p.FrictionDropIfLaminar = calc.Some(out.frictionDrop(in, out.Friction.IfLaminar.Value))
@@ -127,63 +129,32 @@ func (out *Result) losses(in *Input) {
 	}
 	p.TotalPressureLoss = p.FrictionDrop + p.FittingsDrop
 	p.FrictionGradient = p.FrictionDrop / in.Length
-	p.HeadLoss = p.TotalPressureLoss / (in.Fluid.Density * in.Gravity)
+	p.HeadLoss = out.headLoss(in)
 }
 
 // steadyCoefficients is the Reynolds number above which a loss coefficient is
 // taken as constant. Common practice.
 const steadyCoefficients = 1e4
 
-func (out *Result) lossConditions(coefficients int) {
+func (out *Result) lossConditions(in *Input, coefficients int) {
 	c := &out.Conditions
 	if c.AtRest {
 		return
 	}
-	c.Developing = out.Regime.EntryLength.Valid
+	c.Developing = in.Length < out.Regime.EntryLength.Value
 	c.ConstantLossLaminar = coefficients > 0 && out.Regime.CanBeLaminar
 	c.ConstantLossLowRe = coefficients > 0 && !c.ConstantLossLaminar && out.Regime.Reynolds < steadyCoefficients
-}
-
-// openChannel closes the account of a section with a free surface.
-func (out *Result) openChannel(in *Input) error {
-	for _, f := range [...]struct {
-		given    bool
-		quantity string
-	}{
-		{in.InletPressure.Valid, "inlet_pressure"}, {in.OutletPressure.Valid, "outlet_pressure"},
-		{in.Inlet.Kind != SameSection, "inlet"}, {in.Outlet.Kind != SameSection, "outlet"},
-	} {
-		if f.given {
-			return &calc.Error{Kind: calc.ErrDomain, Quantity: f.quantity,
-				Detail: "with a free surface the pressure is that above the liquid and no end is joined; leave this out, or leave liquid_depth out if the section runs full"}
-		}
-	}
-	out.Conditions.DepthGiven = true
-	out.Conditions.Developing = out.Conditions.Developing && in.Length < out.Regime.EntryLength.Value
-	out.Pressure.FrictionSlope = calc.Some(out.Pressure.FrictionDrop / (in.Fluid.Density * in.Gravity * in.Length))
-	if in.Rise.Valid {
-		out.Pressure.BedSlope = calc.Some(-in.Rise.Value / in.Length)
-	}
-	return out.finite()
+	c.EndLossMissing = coefficients == 0 && (in.Inlet.Kind == Reservoir || in.Outlet.Kind == Reservoir)
 }
 
 // closedLine closes the account of a section that runs full.
-func (out *Result) closedLine(in *Input) error {
+func (out *Result) closedLine(in *Input, gain float64) error {
+	if err := out.endVelocities(in); err != nil {
+		return err
+	}
+	out.Conditions.GasIncompressible = in.Fluid.Phase == fluid.Gas
 	p := &out.Pressure
-	var err error
-	if p.InletVelocity, err = out.endVelocity(&in.Inlet, "inlet"); err != nil {
-		return err
-	}
-	if p.OutletVelocity, err = out.endVelocity(&in.Outlet, "outlet"); err != nil {
-		return err
-	}
-	c := &out.Conditions
-	c.Developing = c.Developing && in.Length < out.Regime.EntryLength.Value
-	c.EndLossMissing = !c.AtRest && (in.Inlet.Kind == Reservoir || in.Outlet.Kind == Reservoir) && p.LossCoefficients == 0
-	c.GasIncompressible = in.Fluid.Phase == fluid.Gas
-	rho := in.Fluid.Density
-	elevation := rho * in.Gravity * in.Rise.Value
-	acceleration := rho / 2 * (p.OutletVelocity - p.InletVelocity) * (p.OutletVelocity + p.InletVelocity)
+	elevation, acceleration := in.elevationDrop(), out.accelerationDrop(in)
 	rest := p.FittingsDrop + elevation + acceleration
 	p.ElevationDrop, p.AccelerationDrop = calc.Some(elevation), calc.Some(acceleration)
 	p.StaticPressureDrop = calc.Some(p.FrictionDrop + rest)
@@ -191,82 +162,52 @@ func (out *Result) closedLine(in *Input) error {
 		p.StaticPressureDropIfLaminar = calc.Some(p.FrictionDropIfLaminar.Value + rest)
 		p.StaticPressureDropIfTurbulent = calc.Some(p.FrictionDropIfTurbulent.Value + rest)
 	}
-	p.FluidPower = calc.Some((p.TotalPressureLoss + elevation) * out.Flow.VolumeFlow)
-	out.pressures(in)
+	p.FluidPower = calc.Some(out.fluidPower(elevation))
+	out.pressures(in, gain)
+	if err := out.finite(); err != nil {
+		return err
+	}
 	return out.compressibility(in)
 }
 
-// endVelocity is the velocity at one end.
-func (out *Result) endVelocity(e *End, name string) (float64, error) {
-	switch e.Kind {
-	case Reservoir:
-		return 0, nil
-	case OtherSection:
-		s, err := e.Section.Of()
-		if err != nil {
-			return 0, &EndError{name, err}
-		}
-		return out.Flow.VolumeFlow / s.FlowArea, nil
+// openChannel closes the account of a section with a free surface.
+func (out *Result) openChannel(in *Input) error {
+	if err := in.checkOpenChannel(); err != nil {
+		return err
 	}
-	return out.Flow.Velocity, nil
+	out.Conditions.DepthGiven = true
+	out.Pressure.FrictionSlope = calc.Some(out.frictionSlope(in))
+	if in.Rise.Valid {
+		out.Pressure.BedSlope = calc.Some(in.bedSlope())
+	}
+	return out.finite()
 }
 
-// pressures gives the pressure at both ends and the lowest on the way. Between
-// the ends the section's own velocity holds; the place of the fittings is not
-// known, so that their loss is taken at the inlet end where that is lower.
-func (out *Result) pressures(in *Input) {
-	p := &out.Pressure
-	drop := p.StaticPressureDrop.Value
+// checkOpenChannel refuses what has no meaning with a free surface.
+func (in *Input) checkOpenChannel() error {
+	quantity := ""
 	switch {
 	case in.InletPressure.Valid:
-		p.InletPressure, p.OutletPressure = in.InletPressure, calc.Some(in.InletPressure.Value-drop)
+		quantity = "inlet_pressure"
 	case in.OutletPressure.Valid:
-		p.InletPressure, p.OutletPressure = calc.Some(in.OutletPressure.Value+drop), in.OutletPressure
+		quantity = "outlet_pressure"
+	case in.Inlet.Kind != SameSection:
+		quantity = "inlet"
+	case in.Outlet.Kind != SameSection:
+		quantity = "outlet"
 	default:
-		return
-	}
-	half, v := in.Fluid.Density/2, out.Flow.Velocity
-	start := p.InletPressure.Value - half*(v-p.InletVelocity)*(v+p.InletVelocity)
-	end := p.OutletPressure.Value + half*(p.OutletVelocity-v)*(p.OutletVelocity+v)
-	lowest := min(p.InletPressure.Value, p.OutletPressure.Value, start, end, start-p.FittingsDrop)
-	p.LowestPressure = calc.Some(lowest)
-	out.Conditions.NotPositive = lowest <= 0
-	vapour := in.Fluid.VapourPressure
-	out.Conditions.BelowVapour = in.Fluid.Phase == fluid.Liquid && vapour.Valid && lowest < vapour.Value
-}
-
-// Bounds of taking a gas as incompressible. Common practice.
-const (
-	gasDropRefused = 0.40 // of the inlet's absolute pressure
-	gasMachRefused = 0.3
-	// GasDropNoted is the drop over inlet pressure above which the answer is doubtful.
-	GasDropNoted = 0.10
-)
-
-// compressibility refuses a gas that cannot be taken as incompressible, where
-// the pressure or the sound speed is known.
-func (out *Result) compressibility(in *Input) error {
-	if in.Fluid.Phase != fluid.Gas {
 		return nil
 	}
-	p := &out.Pressure
-	if p.InletPressure.Valid && p.StaticPressureDrop.Value > gasDropRefused*p.InletPressure.Value {
-		return &calc.Error{Kind: calc.ErrRange, Quantity: "static_pressure_drop", Value: p.StaticPressureDrop.Value, Max: gasDropRefused * p.InletPressure.Value,
-			Detail: "this gas would lose more than 40 % of its absolute pressure; taking it as incompressible does not hold"}
-	}
-	if s := in.Fluid.SoundSpeed; s.Valid && max(out.Flow.Velocity, p.InletVelocity, p.OutletVelocity) > gasMachRefused*s.Value {
-		return &calc.Error{Kind: calc.ErrRange, Quantity: "velocity", Value: out.Flow.Velocity, Max: gasMachRefused * s.Value,
-			Detail: "above Mach number 0.3 taking a gas as incompressible does not hold"}
-	}
-	return nil
+	return &calc.Error{Kind: calc.ErrDomain, Quantity: quantity,
+		Detail: "with a free surface the pressure is that above the liquid and no end is joined; leave this out, or leave liquid_depth out if the section runs full"}
 }
 
 // finite catches an overflow on accepted input. One sum is enough: it is finite
 // only if each of its terms is, and none can be large enough to overflow it.
 func (out *Result) finite() error {
-	p, f := &out.Pressure, &out.Friction
-	sum := p.FrictionDrop + p.TotalPressureLoss + p.HeadLoss + p.FrictionGradient + p.StaticPressureDrop.Value + p.FluidPower.Value +
-		p.FrictionSlope.Value + p.InletPressure.Value + p.OutletPressure.Value + f.WallShear + f.RoughnessReynolds
+	p := &out.Pressure
+	sum := p.TotalPressureLoss + p.HeadLoss + p.FrictionGradient + p.StaticPressureDrop.Value + p.FluidPower.Value +
+		p.FrictionSlope.Value + p.InletPressure.Value + p.OutletPressure.Value + p.LowestPressure.Value
 	if calc.Finite(sum) {
 		return nil
 	}

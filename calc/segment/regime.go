@@ -26,8 +26,16 @@ import (
 //
 // Accuracy: that of its parts.
 //
-// Errors: those of its parts.
+// Errors: those of its parts. With an error the result is empty.
 func Regime(in *Input, out *Result) error {
+	err := in.regime(out)
+	if err != nil {
+		*out = Result{}
+	}
+	return err
+}
+
+func (in *Input) regime(out *Result) error {
 	*out = Result{}
 	out.Fluid = in.Fluid
 	var err error
@@ -69,12 +77,20 @@ func Regime(in *Input, out *Result) error {
 //
 // Accuracy: that of its parts.
 //
-// Errors: those of its parts.
+// Errors: those of its parts. With an error the result is empty.
 func Friction(in *Input, out *Result) error {
+	err := in.friction(out)
+	if err != nil {
+		*out = Result{}
+	}
+	return err
+}
+
+func (in *Input) friction(out *Result) error {
 	if err := calc.Roughness.Check(in.Roughness); err != nil {
 		return err
 	}
-	if err := Regime(in, out); err != nil {
+	if err := in.regime(out); err != nil {
 		return err
 	}
 	var err error
