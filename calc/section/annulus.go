@@ -37,16 +37,23 @@ type Annulus struct {
 // Errors: [calc.ErrDomain] if a dimension is out of bounds or the inner
 // diameter not below the outer.
 func (a Annulus) Full() (Properties, error) {
+	var p Properties
+	err := a.fullInto(&p)
+	return p, err
+}
+
+func (a Annulus) fullInto(p *Properties) error {
 	if err := check(dimension{calc.OuterDiameter, a.OuterDiameter}, dimension{calc.InnerDiameter, a.InnerDiameter}); err != nil {
-		return Properties{}, err
+		return err
 	}
 	gap := a.OuterDiameter - a.InnerDiameter
 	if !(gap > 0) {
-		return Properties{}, &calc.Error{Kind: calc.ErrDomain, Quantity: "inner_diameter", Value: a.InnerDiameter, Max: a.OuterDiameter,
+		return &calc.Error{Kind: calc.ErrDomain, Quantity: "inner_diameter", Value: a.InnerDiameter, Max: a.OuterDiameter,
 			Detail: "the inner diameter must be below the outer one, which is " + text(a.OuterDiameter) + " m"}
 	}
 	sum := a.OuterDiameter + a.InnerDiameter
-	return outline{area: math.Pi / 4 * gap * sum, perimeter: math.Pi * sum, laminar: calc.Some(annulusLaminar(math.Log1p(gap / a.InnerDiameter)))}.full()
+	o := outline{area: math.Pi / 4 * gap * sum, perimeter: math.Pi * sum, laminar: calc.Some(annulusLaminar(math.Log1p(gap / a.InnerDiameter)))}
+	return o.fullInto(p)
 }
 
 func annulusLaminar(s float64) float64 {
@@ -55,7 +62,7 @@ func annulusLaminar(s float64) float64 {
 		return 128 * half * half / (math.Cosh(s) - math.Sinh(s)/s)
 	}
 	sum, term := 0.0, s*s/6 // cosh s - sinh(s)/s = Σ 2k s^(2k)/(2k + 1)!
-	for k := 1.0; k < 20; k++ {
+	for k := 1.0; 2*k*term > 1e-18*sum; k++ {
 		sum += 2 * k * term
 		term *= s * s / ((2*k + 2) * (2*k + 3))
 	}

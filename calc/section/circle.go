@@ -31,18 +31,30 @@ type Circle struct {
 //
 // Errors: [calc.ErrDomain] if the diameter is out of bounds.
 func (c Circle) Full() (Properties, error) {
+	var p Properties
+	err := c.fullInto(&p)
+	return p, err
+}
+
+func (c Circle) fullInto(p *Properties) error {
 	if err := calc.Diameter.Check(c.Diameter); err != nil {
-		return Properties{}, err
+		return err
 	}
-	return round(c.Diameter)
+	return roundInto(p, c.Diameter)
 }
 
 func round(d float64) (Properties, error) {
-	p, err := outline{area: math.Pi / 4 * d * d, perimeter: math.Pi * d, laminar: calc.Some(64)}.full()
-	p.HydraulicDiameter, p.EqualAreaDiameter, p.LaminarEquivalent = d, d, calc.Some(d)
-	p.HydraulicRadius = d / 4
-	p.Round = true
+	var p Properties
+	err := roundInto(&p, d)
 	return p, err
+}
+
+// roundInto states the equalities of a round bore instead of computing them.
+func roundInto(p *Properties, d float64) error {
+	p.FlowArea, p.WettedPerimeter, p.HydraulicRadius = math.Pi/4*d*d, math.Pi*d, d/4
+	p.HydraulicDiameter, p.EqualAreaDiameter, p.LaminarEquivalent = d, d, calc.Some(d)
+	p.LaminarConstant, p.FillRatio, p.Round = calc.Some(64), calc.Some(1), true
+	return p.check()
 }
 
 // PartlyFull returns the properties of the bore with a free surface.
@@ -71,50 +83,66 @@ func round(d float64) (Properties, error) {
 // Errors: [calc.ErrDomain] if the diameter is out of bounds or the depth above
 // it.
 func (c Circle) PartlyFull(liquidDepth float64) (Properties, error) {
-	if err := calc.Diameter.Check(c.Diameter); err != nil {
-		return Properties{}, err
-	}
-	return roundPartlyFull(c.Diameter, liquidDepth)
+	var p Properties
+	err := c.partlyFullInto(&p, liquidDepth)
+	return p, err
 }
 
-func roundPartlyFull(d, depth float64) (Properties, error) {
+func (c Circle) partlyFullInto(p *Properties, liquidDepth float64) error {
+	if err := calc.Diameter.Check(c.Diameter); err != nil {
+		return err
+	}
+	return roundPartlyFullInto(p, roundPool{c.Diameter, liquidDepth})
+}
+
+// roundPool is a liquid in a round bore.
+type roundPool struct{ diameter, depth float64 }
+
+func roundPartlyFullInto(p *Properties, in roundPool) error {
+	d, depth := in.diameter, in.depth
 	if err := checkDepth(depth, d); err != nil {
-		return Properties{}, err
+		return err
 	}
 	if depth == d {
-		return round(d)
+		return roundInto(p, d)
 	}
 	r := d / 2
 	s := segmentAt(depth/d, (d-depth)/d)
-	return pool{area: r * r * s.area, perimeter: 2 * r * s.angle, width: d * s.half, moment: r * r * r * s.moment, depth: depth, height: d}.properties()
+	l := pool{area: r * r * s.area, perimeter: 2 * r * s.angle, width: d * s.half, moment: r * r * r * s.moment, depth: depth, height: d}
+	return l.into(p)
 }
 
 // circleSegment is the part of the unit circle below a chord: half its central
 // angle, half its chord, its area and its first moment about the chord.
 type circleSegment struct{ angle, half, area, moment float64 }
 
+// arc is half of a central angle with its sine and cosine. They come from the
+// depth as well and need no sincos: sin α = 2 sqrt(b a), cos α = a - b, with the
+// depth b below and the height a above the chord, both over the diameter.
+type arc struct{ angle, sin, cos float64 }
+
 // segmentAt takes the depth and the height left above it, both over the
 // diameter, so that neither end loses digits.
 func segmentAt(below, above float64) circleSegment {
 	s := circleSegment{half: 2 * math.Sqrt(below*above)}
 	if below <= 0.5 {
-		s.angle = 2 * math.Asin(math.Sqrt(below))
-		s.area, s.moment = segmentArea(s.angle), segmentMoment(s.angle)
+		wet := arc{2 * math.Asin(math.Sqrt(below)), s.half, above - below}
+		s.angle, s.area, s.moment = wet.angle, segmentArea(wet), segmentMoment(wet)
 		return s
 	}
-	rest := 2 * math.Asin(math.Sqrt(above))
-	s.angle = math.Pi - rest
-	s.area = math.Pi - segmentArea(rest)
+	dry := arc{2 * math.Asin(math.Sqrt(above)), s.half, below - above}
+	s.angle = math.Pi - dry.angle
+	s.area = math.Pi - segmentArea(dry)
 	// moment of the whole circle about the chord, plus what the part above it would add
-	s.moment = math.Pi*(below-above) + segmentMoment(rest)
+	s.moment = math.Pi*(below-above) + segmentMoment(dry)
 	return s
 }
 
 // segmentArea is α - sin α cos α, by its series where the two nearly cancel.
-func segmentArea(a float64) float64 {
+func segmentArea(s arc) float64 {
+	a := s.angle
 	if a > 0.7 {
-		sin, cos := math.Sincos(a)
-		return a - sin*cos
+		return a - s.sin*s.cos
 	}
 	x := -4 * a * a
 	sum, term := 0.0, 2.0/3
@@ -129,10 +157,10 @@ func segmentArea(a float64) float64 {
 }
 
 // segmentMoment is sin α - sin³α/3 - α cos α, by its series for small angles.
-func segmentMoment(a float64) float64 {
+func segmentMoment(s arc) float64 {
+	a := s.angle
 	if a > 0.9 {
-		sin, cos := math.Sincos(a)
-		return sin*(1-sin*sin/3) - a*cos
+		return s.sin*(1-s.sin*s.sin/3) - a*s.cos
 	}
 	x := a * a
 	sum, power := 0.0, 1.0

@@ -48,11 +48,17 @@ func (p Pipe) bore() (float64, error) {
 //
 // Errors: [calc.ErrDomain] if a dimension is out of bounds or no bore is left.
 func (p Pipe) Full() (Properties, error) {
+	var full Properties
+	err := p.fullInto(&full)
+	return full, err
+}
+
+func (p Pipe) fullInto(full *Properties) error {
 	d, err := p.bore()
 	if err != nil {
-		return Properties{}, err
+		return err
 	}
-	return round(d)
+	return roundInto(full, d)
 }
 
 // PartlyFull returns the properties of the bore with a free surface.
@@ -79,9 +85,15 @@ func (p Pipe) Full() (Properties, error) {
 // Errors: [calc.ErrDomain] if a dimension is out of bounds, no bore is left or
 // the depth is above it.
 func (p Pipe) PartlyFull(liquidDepth float64) (Properties, error) {
+	var partly Properties
+	err := p.partlyFullInto(&partly, liquidDepth)
+	return partly, err
+}
+
+func (p Pipe) partlyFullInto(partly *Properties, liquidDepth float64) error {
 	d, err := p.bore()
 	if err != nil {
-		return Properties{}, err
+		return err
 	}
-	return roundPartlyFull(d, liquidDepth)
+	return roundPartlyFullInto(partly, roundPool{d, liquidDepth})
 }

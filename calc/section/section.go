@@ -99,32 +99,40 @@ type outline struct {
 
 // full completes the properties of a section that runs full.
 func (o outline) full() (Properties, error) {
-	p := o.common()
-	p.FillRatio = calc.Some(1)
-	return p, p.check()
+	var p Properties
+	err := o.fullInto(&p)
+	return p, err
 }
 
-func (o outline) common() Properties {
-	p := Properties{
-		FlowArea: o.area, WettedPerimeter: o.perimeter,
-		HydraulicDiameter: 4 * o.area / o.perimeter, HydraulicRadius: o.area / o.perimeter,
-		EqualAreaDiameter: math.Sqrt(o.area) * twoOverRootPi,
-	}
+// fullInto is full, written into p.
+func (o *outline) fullInto(p *Properties) error {
+	o.common(p)
+	p.FillRatio = calc.Some(1)
+	return p.check()
+}
+
+func (o *outline) common(p *Properties) {
+	p.FlowArea, p.WettedPerimeter = o.area, o.perimeter
+	p.HydraulicRadius = o.area / o.perimeter
+	p.HydraulicDiameter = 4 * p.HydraulicRadius // exact
+	p.EqualAreaDiameter = math.Sqrt(o.area) * twoOverRootPi
 	if o.laminar.Valid {
 		p.LaminarConstant = o.laminar
 		p.LaminarEquivalent = calc.Some(p.HydraulicDiameter * (64 / o.laminar.Value))
 	}
-	return p
 }
 
 const twoOverRootPi = 2 / (math.SqrtPi)
 
-// check catches an area or perimeter that vanished or overflowed.
+// check catches an area or perimeter that vanished or overflowed, and then leaves
+// no properties.
 func (p *Properties) check() error {
 	if p.FlowArea > 0 && p.HydraulicDiameter > 0 && calc.Finite(p.FlowArea) && calc.Finite(p.WettedPerimeter) && calc.Finite(p.HydraulicDiameter) {
 		return nil
 	}
-	return &calc.Error{Kind: calc.ErrDomain, Quantity: "flow_area", Value: p.FlowArea,
+	area := p.FlowArea
+	*p = Properties{}
+	return &calc.Error{Kind: calc.ErrDomain, Quantity: "flow_area", Value: area,
 		Detail: "these dimensions leave no flow area, or none that can be expressed"}
 }
 
@@ -138,7 +146,15 @@ type pool struct {
 // properties completes a partly full section. A pool that reaches the crown
 // where the section has no width is a full section.
 func (l pool) properties() (Properties, error) {
-	p := outline{area: l.area, perimeter: l.perimeter}.common()
+	var p Properties
+	err := l.into(&p)
+	return p, err
+}
+
+// into is properties, written into p.
+func (l *pool) into(p *Properties) error {
+	o := outline{area: l.area, perimeter: l.perimeter}
+	o.common(p)
 	p.FreeSurface = true
 	p.FreeSurfaceWidth = calc.Some(l.width)
 	p.MeanDepth = calc.Some(l.area / l.width)
@@ -146,7 +162,7 @@ func (l pool) properties() (Properties, error) {
 	if l.height > 0 {
 		p.FillRatio = calc.Some(l.depth / l.height)
 	}
-	return p, p.check()
+	return p.check()
 }
 
 // checkDepth refuses a depth above the height of the section.
