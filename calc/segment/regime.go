@@ -36,10 +36,9 @@ func Regime(in *Input, out *Result) error {
 }
 
 func (in *Input) regime(out *Result) error {
-	*out = Result{}
-	out.Fluid = in.Fluid
+	out.Fluid, out.Friction, out.Pressure, out.Conditions = in.Fluid, friction.Result{}, Pressure{}, Conditions{} // the rest is set below
 	var err error
-	if out.Section, err = in.Section.Of(); err != nil {
+	if err = in.Section.Into(&out.Section); err != nil {
 		return err
 	}
 	if out.Flow, err = flow.StateOf(in.Flow, out.Section.FlowArea, in.Fluid.Density); err != nil {
