@@ -43,21 +43,47 @@ import (
 // [calc.ErrRange] outside the range of the law or for a turbulent wall rougher than
 // 0.05 D; [calc.ErrDomain] for impossible input; [calc.ErrNonFinite] on overflow.
 func Of(in Input) (Result, error) {
+	var r Result
+	err := in.Into(&r)
+	return r, err
+}
+
+// Into writes the friction of the wall into r, without the copies of [Of]; with an
+// error r is empty.
+//
+// Equation:
+//
+//	as [Of]
+//
+// Symbols:
+//   - r: the friction of the wall, each with its unit at [Result] [1], [Pa] or [m/s]
+//
+// Validity: that of [Of].
+//
+// Source: that of [Of].
+//
+// Accuracy: the digits of [Of].
+//
+// Errors: those of [Of].
+func (in *Input) Into(r *Result) error {
+	*r = Result{}
 	if err := in.check(); err != nil {
-		return Result{}, err
+		return err
 	}
-	r := Result{RelativeRoughness: in.Roughness / in.HydraulicDiameter}
+	r.RelativeRoughness = in.Roughness / in.HydraulicDiameter
 	if in.Regime.Name == flow.AtRest {
-		return r, nil
+		return nil
 	}
-	if err := in.branches(&r); err != nil {
-		return Result{}, err
+	if err := in.branches(r); err != nil {
+		*r = Result{}
+		return err
 	}
-	in.wall(&r)
-	if !calc.Finite(r.Darcy.Value + r.WallShear + r.RoughnessReynolds) { // none is negative
-		return Result{}, &calc.Error{Kind: calc.ErrNonFinite, Quantity: "wall_shear_stress", Value: r.WallShear}
+	in.wall(r)
+	if sum := r.Darcy.Value + r.WallShear + r.RoughnessReynolds; !calc.Finite(sum) { // none is negative
+		*r = Result{}
+		return &calc.Error{Kind: calc.ErrNonFinite, Quantity: "wall_shear_stress", Value: sum}
 	}
-	return r, nil
+	return nil
 }
 
 // wall gives what follows from the factor.

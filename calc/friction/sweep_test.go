@@ -34,7 +34,8 @@ var swept = map[string]func(v [6]float64) ([]float64, error){
 		f, err := whichLaw(v[2]).Factor(friction.Point{Reynolds: v[0], RelativeRoughness: v[1]})
 		return []float64{f}, err
 	},
-	"Of": sweepOf,
+	"Of":         sweepOf,
+	"Input.Into": sweepInto,
 }
 
 // described are exported functions that calculate nothing.
@@ -63,11 +64,25 @@ func whichLaw(v float64) friction.Law {
 }
 
 func sweepOf(v [6]float64) ([]float64, error) {
+	r, err := friction.Of(sweptInput(v))
+	return numbers(&r), err
+}
+
+func sweepInto(v [6]float64) ([]float64, error) {
+	in, r := sweptInput(v), friction.Result{WallShear: 1} // what was there before must not stay
+	err := in.Into(&r)
+	return numbers(&r), err
+}
+
+func sweptInput(v [6]float64) friction.Input {
 	in := friction.Input{Velocity: v[0], Roughness: v[1], Law: whichLaw(v[2]), HydraulicDiameter: v[3], KinematicViscosity: v[4], Density: v[5],
 		LaminarConstant: calc.Some(64), LaminarEquivalent: calc.Some(v[3])}
 	in.Regime, _ = flow.RegimeOf(flow.RegimeInput{Velocity: v[0], HydraulicDiameter: v[3], KinematicViscosity: v[4]})
-	r, err := friction.Of(in)
-	return []float64{r.Darcy.Value, r.Fanning.Value, r.RelativeRoughness, r.WallShear, r.FrictionVelocity, r.RoughnessReynolds, r.IfLaminar.Value, r.IfTurbulent.Value}, err
+	return in
+}
+
+func numbers(r *friction.Result) []float64 {
+	return []float64{r.Darcy.Value, r.Fanning.Value, r.RelativeRoughness, r.WallShear, r.FrictionVelocity, r.RoughnessReynolds, r.IfLaminar.Value, r.IfTurbulent.Value}
 }
 
 // hold fails on a number that is not finite, and on a number beside an error.
@@ -104,7 +119,7 @@ func TestEveryCalculationAnswersOrRefusesAnyNumber(t *testing.T) {
 						if err == nil {
 							answered++
 						}
-						if name != "Of" {
+						if name != "Of" && name != "Input.Into" {
 							break
 						}
 					}

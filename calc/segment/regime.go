@@ -92,13 +92,13 @@ func (in *Input) friction(out *Result) error {
 	if err := in.regime(out); err != nil {
 		return err
 	}
-	var err error
-	out.Friction, err = friction.Of(friction.Input{
+	f := friction.Input{
 		Density: in.Fluid.Density, Velocity: out.Flow.Velocity, KinematicViscosity: in.Fluid.KinematicViscosity,
 		Roughness: in.Roughness, HydraulicDiameter: out.Section.HydraulicDiameter,
 		LaminarConstant: out.Section.LaminarConstant, LaminarEquivalent: out.Section.LaminarEquivalent,
 		Regime: out.Regime, Law: in.Law, DiameterRule: in.DiameterRule,
-	})
+	}
+	err := f.Into(&out.Friction)
 	out.Conditions.LawBelowRange = out.Friction.LawBelowRange
 	return err
 }
