@@ -72,7 +72,7 @@ func (c *canonical) section(s *document.Section) {
 		c.number(p.LiningThickness)
 	} else {
 		for i := range s.Spec.Fields {
-			c.optional(given(s.Dims[i]))
+			c.optional(dimension(s, i))
 		}
 	}
 	c.number(float64(len(s.Vertices)))
@@ -85,6 +85,21 @@ func (c *canonical) section(s *document.Section) {
 		c.number(float64(e))
 	}
 	c.optional(given(s.LiquidDepth))
+}
+
+// dimension is one dimension of a section, with the default that its shape takes
+// where it is left out.
+func dimension(s *document.Section, i int) calc.Optional {
+	n := s.Dims[i]
+	if !n.Given {
+		switch s.Spec.Fields[i].Input {
+		case calc.CornerRadius:
+			return calc.Some(0)
+		case calc.ApexOffset: // over the middle of the base
+			return calc.Some(s.Dims[0].Value / 2)
+		}
+	}
+	return given(n)
 }
 
 func (w *work) fluidAndFlow(c *canonical) {

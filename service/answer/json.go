@@ -99,8 +99,10 @@ func appendList(dst []byte, values []string) []byte {
 }
 
 // AppendNumber appends the shortest text that reads back as the same number, in
-// the form of JSON.
+// the form of JSON. Minus zero is written 0: inputs that differ by that sign
+// alone have one fingerprint, and so one answer.
 func AppendNumber(dst []byte, v float64) []byte {
+	v += 0
 	if a := math.Abs(v); a != 0 && (a < 1e-6 || a >= 1e21) {
 		dst = strconv.AppendFloat(dst, v, 'e', -1, 64)
 		if n := len(dst); n >= 4 && dst[n-4] == 'e' && dst[n-2] == '0' { // e-09 becomes e-9
