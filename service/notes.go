@@ -313,6 +313,8 @@ func (w *work) defaultsUsed(out *answer.Answer) {
 	}
 	if w.req.Door == document.SegmentDoor {
 		w.segmentDefaults(add)
+	} else {
+		w.atmosphereDefault(add)
 	}
 	w.defaults = list
 	if len(list) > 0 {
@@ -329,13 +331,18 @@ func (w *work) segmentDefaults(add func(string)) {
 	if len(w.req.Fittings) == 0 {
 		add("no fittings")
 	}
-	if w.gaugeUsed && !w.req.Site.AtmosphericPressure.Given && !w.req.Site.Altitude.Given {
-		add("atmospheric_pressure 101325 Pa")
-	}
+	w.atmosphereDefault(add)
 	for i := range w.req.Fittings {
 		if f := &w.req.Fittings[i]; f.RatedDrop.Given && !f.Exponent.Given {
 			add("exponent 2 of rated components")
 			break
 		}
+	}
+}
+
+// atmosphereDefault stands at every door: a vapour pressure can be gauge too.
+func (w *work) atmosphereDefault(add func(string)) {
+	if w.gaugeUsed && !w.req.Site.AtmosphericPressure.Given && !w.req.Site.Altitude.Given {
+		add("atmospheric_pressure 101325 Pa")
 	}
 }
