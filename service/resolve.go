@@ -133,6 +133,7 @@ func (w *work) absolute(n document.Number, in calc.Input, pointer string) calc.O
 	p := n.Value + w.atmosphere
 	if !in.Bound().Contains(p) {
 		w.refuse(pointer, "outside_domain", fmt.Sprintf("%g Pa gauge is %g Pa absolute at this site's atmosphere of %g Pa; a pressure lies above vacuum", n.Value, p, w.atmosphere))
+		return calc.Optional{} // refused once, and not again by what takes it
 	}
 	return calc.Some(p)
 }
