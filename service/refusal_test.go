@@ -63,6 +63,8 @@ var refusalCases = []refusalCase{
 	{"a depth above the crown at the outlet", "/outlet/liquid_depth", "outside_domain", "0.1", with(quiet(), object{"outlet": object{"shape": "circle", "diameter": 0.1, "liquid_depth": 0.2}})},
 	{"a gas that loses too much", "/flow", "outside_validity", "40 %", with(air(), object{"inlet_pressure": 400})},
 
+	{"a flow far above the rated one", "/fittings/0/rated_flow", "outside_validity", "right unit", with(quiet(), object{"fittings": []any{object{"rated_drop": 18000, "rated_flow": 1e-150}}})},
+
 	{"limits in the wrong order", "/regime/lower_critical_reynolds", "outside_domain", "must not exceed", with(quiet(), object{"regime": object{"lower_critical_reynolds": 5000}})},
 	{"an upper limit below the lower", "/regime/upper_critical_reynolds", "outside_domain", "must not be below", with(quiet(), object{"regime": object{"upper_critical_reynolds": 2000}})},
 	{"calm without its limit", "/regime/calm_laminar_to_reynolds", "outside_domain", "up to which", with(quiet(), object{"regime": object{"approach_flow": "calm"}})},

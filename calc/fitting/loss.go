@@ -60,8 +60,8 @@ func (e *ItemError) Unwrap() error { return e.Err }
 // entry; K itself is seldom known better than 10 to 30 % (common practice).
 //
 // Errors: an [*ItemError] around [calc.ErrDomain] for an entry out of bounds, or
-// around [calc.ErrRange] for a flow so far above the rated one that no drop can be
-// written; [calc.ErrDomain] for conditions that no flow has; [calc.ErrNonFinite] on
+// around [calc.ErrRange] for a flow so far above the rated one that the drop exceeds
+// 1e100 Pa; [calc.ErrDomain] for conditions that no flow has; [calc.ErrNonFinite] on
 // overflow.
 func LossOf(items []Item, c Conditions) (Loss, error) {
 	if err := c.check(); err != nil {
@@ -82,7 +82,7 @@ func LossOf(items []Item, c Conditions) (Loss, error) {
 			continue
 		}
 		drop := it.Count * it.ratedDrop(c.VolumeFlow)
-		if !calc.Finite(drop) {
+		if !(drop <= largestDrop) {
 			return Loss{}, &ItemError{i, it.farAboveRated()}
 		}
 		l.ComponentDrop += drop
@@ -129,9 +129,13 @@ func (it *Item) check() error {
 	return calc.Exponent.Check(it.Exponent)
 }
 
+// largestDrop of one entry [Pa] keeps sums of drops, head and power finite, as no
+// flow that anybody could have comes near it.
+const largestDrop = 1e100
+
 func (it *Item) farAboveRated() error {
 	return &calc.Error{Kind: calc.ErrRange, Quantity: "rated_flow", Value: it.RatedFlow,
-		Detail: "the flow is so far above the rated flow that the drop cannot be written; is rated_flow in the right unit?"}
+		Detail: "the flow is so far above the rated flow that the drop would exceed 1e100 Pa; is rated_flow in the right unit?"}
 }
 
 // ratedDrop is the drop of one component, Δpr (q/qr)ⁿ [Pa]; without flow there is none.
