@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"errors"
 	"maps"
+	"slices"
 	"strings"
 	"testing"
 
@@ -34,7 +35,8 @@ func pump() object {
 // ("fluid/density"). A nil removes the member.
 func with(request object, changes object) object {
 	out := clone(request).(object)
-	for path, v := range changes {
+	for _, path := range slices.Sorted(maps.Keys(changes)) { // a block before its members
+		v := changes[path]
 		at := out
 		keys := strings.Split(path, "/")
 		for _, k := range keys[:len(keys)-1] {
