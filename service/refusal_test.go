@@ -40,6 +40,7 @@ var refusalCases = []refusalCase{
 	{"a trapezoid without height and depth", "/section/height", "outside_domain", "liquid_depth", plantShape("trapezoid", object{"height": nil})},
 	{"a polygon that crosses itself", "/section/vertices", "outside_domain", "cross", plantShape("polygon", object{"dry_edges": nil, "vertices": []any{[]any{0, 0}, []any{1, 1}, []any{1, 0}, []any{0, 1}}})},
 	{"an edge that is not there", "/section/dry_edges", "outside_domain", "", plantShape("polygon", object{"dry_edges": []any{7}})},
+	{"a sheared duct without room", "/section", "outside_domain", "flow area", plantShape("trapezoid", object{"bottom_width": 1e-240, "bank_left": -1, "bank_right": 1})},
 	{"all edges dry", "/section/dry_edges", "outside_domain", "", plantShape("polygon", object{"dry_edges": []any{0, 1, 2, 3}})},
 
 	{"laminar flow in a sector", "/section", "not_known_yet", "not known yet for this section", with(plantShape("sector", nil), object{"fluid/dynamic_viscosity": 10})},

@@ -124,16 +124,19 @@ func (o *outline) common(p *Properties) {
 
 const twoOverRootPi = 2 / (math.SqrtPi)
 
+// leastArea [m²] is far below an atom; it keeps the squares of velocities finite.
+const leastArea = 1e-40
+
 // check catches an area or perimeter that vanished or overflowed, and then leaves
 // no properties.
 func (p *Properties) check() error {
-	if p.FlowArea > 0 && p.HydraulicDiameter > 0 && calc.Finite(p.FlowArea) && calc.Finite(p.WettedPerimeter) && calc.Finite(p.HydraulicDiameter) {
+	if p.FlowArea >= leastArea && p.HydraulicDiameter > 0 && calc.Finite(p.FlowArea) && calc.Finite(p.WettedPerimeter) && calc.Finite(p.HydraulicDiameter) {
 		return nil
 	}
 	area := p.FlowArea
 	*p = Properties{}
 	return &calc.Error{Kind: calc.ErrDomain, Quantity: "flow_area", Value: area,
-		Detail: "these dimensions leave no flow area, or none that can be expressed"}
+		Detail: "these dimensions leave no flow area, or one below 1e-40 m2 or too large to be expressed"}
 }
 
 // pool is a liquid with a free surface: its outline, the width of the surface
