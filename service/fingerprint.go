@@ -6,6 +6,7 @@ import (
 	"math"
 
 	"borewright/calc"
+	"borewright/calc/section"
 	"borewright/service/answer"
 	"borewright/service/document"
 )
@@ -19,7 +20,7 @@ func (w *work) fingerprint(out *answer.Answer) {
 	c.text("borewright")
 	c.number(MethodRevision)
 	c.text(w.req.Door.String())
-	c.section(&w.req.Section)
+	c.section(&w.req.Section, w.in.Section.Shape)
 	if w.req.Door != document.SectionDoor {
 		w.fluidAndFlow(&c)
 	}
@@ -59,14 +60,13 @@ func (c *canonical) text(s string) {
 
 // section writes the shape and its dimensions in the order of the table; a pipe
 // by name by what the name resolves to.
-func (c *canonical) section(s *document.Section) {
+func (c *canonical) section(s *document.Section, shape section.Shape) {
 	if !s.Given {
 		c.text("")
 		return
 	}
 	c.text(s.Spec.Name)
-	if s.Spec.Build == nil {
-		p, _ := pipeOf(s) // an unknown name has been refused before
+	if p, named := shape.(section.Pipe); named {
 		c.number(p.OutsideDiameter)
 		c.number(p.WallThickness)
 		c.number(p.LiningThickness)
@@ -123,10 +123,10 @@ func (w *work) segmentInputs(c *canonical) {
 	c.number(w.in.Gravity)
 	c.optional(w.in.InletPressure)
 	c.optional(w.in.OutletPressure)
-	for _, e := range [...]*document.End{&w.req.Inlet, &w.req.Outlet} {
-		c.number(float64(e.Kind))
-		c.section(&e.Section)
-	}
+	c.number(float64(w.req.Inlet.Kind))
+	c.section(&w.req.Inlet.Section, w.in.Inlet.Section.Shape)
+	c.number(float64(w.req.Outlet.Kind))
+	c.section(&w.req.Outlet.Section, w.in.Outlet.Section.Shape)
 	c.number(float64(len(w.items)))
 	for i := range w.items {
 		it := &w.items[i]

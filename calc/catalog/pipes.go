@@ -28,21 +28,31 @@ type PipeRow struct {
 }
 
 type pipeStandard struct {
-	name string
-	rows []PipeRow
+	name  string
+	short string // the name as standardOf compares it
+	rows  []PipeRow
+	sized map[size][]PipeRow // the rows of one size, by both of its names
 }
+
+// size is a nominal size: "NPS" and "1-1/2", or "DN" and "40".
+type size struct{ system, name string }
 
 var standards = sync.OnceValue(func() []pipeStandard {
 	return []pipeStandard{pipesOf("ASME B36.10M", asmeB3610), pipesOf("ASME B36.19M", asmeB3619)}
 })
 
 func pipesOf(name, data string) pipeStandard {
-	s := pipeStandard{name: name}
+	s := pipeStandard{name: name, short: shortName(name), sized: map[size][]PipeRow{}}
 	for _, row := range rowsOf(name, data) {
 		s.rows = append(s.rows, PipeRow{
 			Standard: name, NPS: row["nps"], DN: row["dn"], Schedule: row["schedule"], Source: row["source"],
 			OutsideDiameter: millimetres(row, "outside_diameter_mm"), WallThickness: millimetres(row, "wall_mm"),
 		})
+	}
+	for _, r := range s.rows {
+		for _, n := range []size{{"NPS", r.NPS}, {"DN", r.DN}} {
+			s.sized[n] = append(s.sized[n], r)
+		}
 	}
 	return s
 }
@@ -67,12 +77,14 @@ func PipeSize(standard, size, schedule string) (PipeRow, error) {
 		return PipeRow{}, err
 	}
 	want := scheduleName(schedule)
-	var known []string
-	for _, r := range rows {
-		if r.Schedule == want {
-			return r, nil
+	for i := range rows {
+		if rows[i].Schedule == want {
+			return rows[i], nil
 		}
-		known = append(known, r.Schedule)
+	}
+	var known []string
+	for i := range rows {
+		known = append(known, rows[i].Schedule)
 	}
 	return PipeRow{}, unknown("schedule", quote(schedule)+" is no schedule of "+size+" in "+s.name+"; it lists "+strings.Join(known, ", "))
 }
@@ -100,23 +112,18 @@ func quote(text string) string {
 	return strconv.Quote(text)
 }
 
-func sizeOf(standard, size string) (*pipeStandard, []PipeRow, error) {
+func sizeOf(standard, text string) (*pipeStandard, []PipeRow, error) {
 	s, err := standardOf(standard)
 	if err != nil {
 		return nil, nil, err
 	}
-	system, name := nominal(size)
+	system, name := nominal(text)
 	if system == "" {
-		return nil, nil, unknown("size", quote(size)+" may be a nominal pipe size in inches or a DN in millimetres; write \"NPS "+name+"\" or \"DN "+name+"\"")
+		return nil, nil, unknown("size", quote(text)+" may be a nominal pipe size in inches or a DN in millimetres; write \"NPS "+name+"\" or \"DN "+name+"\"")
 	}
-	var rows []PipeRow
-	for _, r := range s.rows {
-		if system == "NPS" && r.NPS == name || system == "DN" && r.DN == name {
-			rows = append(rows, r)
-		}
-	}
+	rows := s.sized[size{system, name}]
 	if len(rows) == 0 {
-		return nil, nil, unknown("size", quote(size)+" is no size of "+s.name+"; it lists "+system+" "+strings.Join(s.sizes(system), ", "))
+		return nil, nil, unknown("size", quote(text)+" is no size of "+s.name+"; it lists "+system+" "+strings.Join(s.sizes(system), ", "))
 	}
 	return s, rows, nil
 }
@@ -139,10 +146,9 @@ func (s *pipeStandard) sizes(system string) []string {
 // and the blanks.
 func standardOf(name string) (*pipeStandard, error) {
 	list := standards()
-	short := strings.TrimSuffix(strings.TrimPrefix(squeezed(name), "ASME"), "M")
-	short = strings.TrimPrefix(strings.TrimPrefix(short, "ANSI"), "/ASME")
+	short := shortName(name)
 	for i := range list {
-		if short == strings.TrimSuffix(strings.TrimPrefix(squeezed(list[i].name), "ASME"), "M") {
+		if short == list[i].short {
 			return &list[i], nil
 		}
 	}
@@ -153,10 +159,16 @@ func standardOf(name string) (*pipeStandard, error) {
 	return nil, unknown("standard", quote(name)+" is not in the catalogue; it has "+strings.Join(names, " and ")+"; any other pipe is given by outside_diameter and wall_thickness")
 }
 
-// squeezed is upper case without blanks, dashes and underscores.
-func squeezed(text string) string {
-	return strings.ToUpper(strings.NewReplacer(" ", "", "-", "", "_", "").Replace(text))
+// shortName is the name of a standard without its publisher and the M.
+func shortName(name string) string {
+	short := strings.TrimSuffix(strings.TrimPrefix(squeezed(name), "ASME"), "M")
+	return strings.TrimPrefix(strings.TrimPrefix(short, "ANSI"), "/ASME")
 }
+
+// squeezed is upper case without blanks, dashes and underscores.
+func squeezed(text string) string { return strings.ToUpper(joints.Replace(text)) }
+
+var joints = strings.NewReplacer(" ", "", "-", "", "_", "")
 
 // nominal reads a size: its system (NPS, DN or none) and its name in it.
 func nominal(size string) (system, name string) {
@@ -176,11 +188,13 @@ func nominal(size string) (system, name string) {
 
 var fractions = map[string]string{".125": "1/8", ".25": "1/4", ".375": "3/8", ".5": "1/2", ".75": "3/4"}
 
+var vulgar = [...][2]string{{"½", "1/2"}, {"¼", "1/4"}, {"¾", "3/4"}, {"⅛", "1/8"}, {"⅜", "3/8"}}
+
 // inches writes a nominal size as the standards do: 1 1/2, 1.5 and 1½ are 1-1/2.
 func inches(text string) string {
-	for old, fraction := range map[string]string{"½": "1/2", "¼": "1/4", "¾": "3/4", "⅛": "1/8", "⅜": "3/8"} {
-		if whole, ok := strings.CutSuffix(text, old); ok {
-			text = strings.TrimSpace(whole) + " " + fraction
+	for _, v := range vulgar {
+		if whole, ok := strings.CutSuffix(text, v[0]); ok {
+			text = strings.TrimSpace(whole) + " " + v[1]
 		}
 	}
 	text = strings.TrimSpace(text)
