@@ -82,9 +82,17 @@ func (f *Field) Value(a *Answer) (float64, bool) { return f.value(&a.Result) }
 type Text struct {
 	Name  string
 	Block Block
-	list  bool
-	value func(*Answer) []string // nothing: null
+	one   func(*Answer) string // empty: null
+	list  func(*Answer) []string
 }
 
 // Values are the texts of the leaf; none means that it has no meaning here.
-func (t *Text) Values(a *Answer) []string { return t.value(a) }
+func (t *Text) Values(a *Answer) []string {
+	if t.list != nil {
+		return t.list(a)
+	}
+	if v := t.one(a); v != "" {
+		return []string{v}
+	}
+	return nil
+}

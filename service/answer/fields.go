@@ -60,7 +60,7 @@ var leaves = [...]leaf{
 
 	number("reynolds", RegimeBlock, units.Dimensionless, always(func(r *segment.Result) float64 { return r.Regime.Reynolds })),
 	text("flow_regime", RegimeBlock, func(a *Answer) string { return a.Result.Regime.Name.String() }),
-	{text: &Text{Name: "possible_regimes", Block: RegimeBlock, list: true, value: possibleRegimes}, key: `"possible_regimes":`},
+	{text: &Text{Name: "possible_regimes", Block: RegimeBlock, list: possibleRegimes}, key: `"possible_regimes":`},
 	number("lower_critical_reynolds", RegimeBlock, units.Dimensionless, always(func(r *segment.Result) float64 { return r.Regime.Lower })),
 	number("upper_critical_reynolds", RegimeBlock, units.Dimensionless, always(func(r *segment.Result) float64 { return r.Regime.Upper })),
 	text("regime_basis", RegimeBlock, func(a *Answer) string { return a.Regime }),
@@ -102,12 +102,7 @@ func number(name string, b Block, kind units.Kind, value func(*segment.Result) (
 }
 
 func text(name string, b Block, value func(*Answer) string) leaf {
-	return leaf{text: &Text{Name: name, Block: b, value: func(a *Answer) []string {
-		if v := value(a); v != "" {
-			return []string{v}
-		}
-		return nil
-	}}, key: `"` + name + `":`}
+	return leaf{text: &Text{Name: name, Block: b, one: value}, key: `"` + name + `":`}
 }
 
 func frictionLaw(a *Answer) string {

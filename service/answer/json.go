@@ -77,14 +77,13 @@ func (l *leaf) block() Block {
 }
 
 func (t *Text) appendJSON(dst []byte, a *Answer) []byte {
-	values := t.value(a)
-	switch {
-	case t.list:
-		return appendList(dst, values)
-	case len(values) == 0:
-		return append(dst, "null"...)
+	if t.list != nil {
+		return appendList(dst, t.list(a))
 	}
-	return appendString(dst, values[0])
+	if v := t.one(a); v != "" {
+		return appendString(dst, v)
+	}
+	return append(dst, "null"...)
 }
 
 func appendList(dst []byte, values []string) []byte {
