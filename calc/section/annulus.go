@@ -56,15 +56,34 @@ func (a Annulus) fullInto(p *Properties) error {
 	return o.fullInto(p)
 }
 
+// annulusLaminar is 64 (cosh s - 1)/(cosh s - sinh(s)/s). Up to s = 1 both are
+// divided by s² and summed by their series, where they would nearly cancel.
 func annulusLaminar(s float64) float64 {
-	half := math.Sinh(s / 2)
 	if s > 1 {
-		return 128 * half * half / (math.Cosh(s) - math.Sinh(s)/s)
+		e := math.Exp(s)
+		cosh, sinh := (e+1/e)/2, (e-1/e)/2
+		return 64 * (cosh - 1) / (cosh - sinh/s)
 	}
-	sum, term := 0.0, s*s/6 // cosh s - sinh(s)/s = Σ 2k s^(2k)/(2k + 1)!
-	for k := 1.0; 2*k*term > 1e-18*sum; k++ {
-		sum += 2 * k * term
-		term *= s * s / ((2*k + 2) * (2*k + 3))
+	x := s * s
+	last := len(annulusSeries) - 1
+	above, below := annulusSeries[last][0], annulusSeries[last][1]
+	for k := last - 1; k >= 0; k-- {
+		above = above*x + annulusSeries[k][0]
+		below = below*x + annulusSeries[k][1]
 	}
-	return 128 * half * half / sum
+	return 64 * above / below
+}
+
+// annulusSeries holds 1/(2k)! and 2k/(2k+1)! from k = 1.
+var annulusSeries = [...][2]float64{
+	{1.0 / 2, 2.0 / 6},
+	{1.0 / 24, 4.0 / 120},
+	{1.0 / 720, 6.0 / 5040},
+	{1.0 / 40320, 8.0 / 362880},
+	{1.0 / 3628800, 10.0 / 39916800},
+	{1.0 / 479001600, 12.0 / 6227020800},
+	{1.0 / 87178291200, 14.0 / 1307674368000},
+	{1.0 / 20922789888000, 16.0 / 355687428096000},
+	{1.0 / 6402373705728000, 18.0 / 121645100408832000},
+	{1.0 / 2432902008176640000, 20.0 / 51090942171709440000},
 }
