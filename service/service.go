@@ -29,13 +29,43 @@ var ErrCalculation = errors.New("the calculation failed on accepted input")
 // Service answers requests. It is safe for concurrent use.
 type Service struct {
 	engine answer.Engine
-	desks  sync.Pool // of *desk
+	desks  sync.Pool // of *Desk
 }
 
-// desk is what one request needs, kept for the next one.
-type desk struct {
-	work   work
-	answer answer.Answer
+// Desk answers one request after the other with the same memory. One goroutine
+// at a time.
+type Desk struct {
+	service *Service
+	work    work
+	answer  answer.Answer
+}
+
+// Desk returns a desk of the service.
+func (s *Service) Desk() *Desk { return &Desk{service: s} }
+
+// Entry says how the values of a request came in.
+type Entry uint8
+
+// The two ways in.
+const (
+	Posted Entry = iota // a request document: a bare number is SI
+	Typed               // typed by a person: a number needs its unit
+)
+
+// Answer reads one JSON request and answers it. The answer stands until the next
+// call. The error is a *document.Refusal where the request is to blame.
+func (d *Desk) Answer(body []byte, door document.Door, entry Entry) (*answer.Answer, error) {
+	read := document.Read
+	if entry == Typed {
+		read = document.ReadTyped
+	}
+	if err := read(body, door, &d.work.req); err != nil {
+		return nil, err
+	}
+	if err := d.service.calculate(&d.work, &d.answer); err != nil {
+		return nil, err
+	}
+	return &d.answer, nil
 }
 
 // New returns a service.
@@ -47,18 +77,16 @@ func New() *Service {
 // The error is a *document.Refusal where the request is to blame; anything else
 // is our fault.
 func (s *Service) AnswerJSON(dst, body []byte, door document.Door) ([]byte, error) {
-	d, ok := s.desks.Get().(*desk)
+	d, ok := s.desks.Get().(*Desk)
 	if !ok {
-		d = &desk{}
+		d = s.Desk()
 	}
 	defer s.desks.Put(d)
-	if err := document.Read(body, door, &d.work.req); err != nil {
+	a, err := d.Answer(body, door, Posted)
+	if err != nil {
 		return dst, err
 	}
-	if err := s.calculate(&d.work, &d.answer); err != nil {
-		return dst, err
-	}
-	return answer.AppendJSON(dst, &d.answer)
+	return answer.AppendJSON(dst, a)
 }
 
 // Calculate answers a request that has been read.

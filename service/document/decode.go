@@ -20,7 +20,8 @@ type decoder struct {
 	door       Door
 	top        []member // of the request itself
 	violations []Violation
-	structural int // violations of what the OpenAPI document states formally
+	structural int  // violations of what the OpenAPI document states formally
+	typed      bool // every value was typed by a person: a number needs its unit
 	// what is being filled
 	fitting *Fitting
 }
@@ -53,8 +54,20 @@ func (s doorSet) has(d Door) bool { return s&(1<<d) != 0 }
 // Read reads one JSON request for the door. req is overwritten; it may be used
 // again, so that a busy server does not allocate. A refusal is a *Refusal.
 func Read(body []byte, door Door, req *Request) error {
+	return read(body, door, req, false)
+}
+
+// ReadTyped is Read for values that a person typed into a query, a cell or a
+// file: a bare number is refused where the field has a unit, and a count may
+// stand in quotes.
+func ReadTyped(body []byte, door Door, req *Request) error {
+	return read(body, door, req, true)
+}
+
+func read(body []byte, door Door, req *Request, typed bool) error {
 	d := &req.decoder
 	d.reset(req, door)
+	d.typed = typed
 	if err := d.scan(body); err != nil {
 		return d.malformed(err)
 	}
@@ -227,9 +240,13 @@ func takes(f FieldSpec) string {
 func (d *decoder) quantity(at int32, f FieldSpec, to *Number) {
 	switch d.nodes[at].kind {
 	case numberNode:
+		if d.typed && f.Kind != units.Dimensionless {
+			d.typedNumber(at, f)
+			return
+		}
 		d.numberValue(at, f, to)
 	case stringNode:
-		if f.Input.Bound().Integer {
+		if f.Input.Bound().Integer && !d.typed {
 			d.wrongType(at, f)
 			return
 		}
@@ -237,6 +254,15 @@ func (d *decoder) quantity(at int32, f FieldSpec, to *Number) {
 	default:
 		d.wrongType(at, f)
 	}
+}
+
+// typedNumber refuses a bare number with the unit that it might have meant.
+func (d *decoder) typedNumber(at int32, f FieldSpec) {
+	if _, err := units.Parse(string(d.src[d.nodes[at].start:d.nodes[at].end]), f.Kind); err != nil {
+		d.unitFault(at, err)
+		return
+	}
+	d.violate(at, units.CodeUnitRequired, takes(f))
 }
 
 func (d *decoder) wrongType(at int32, f FieldSpec) {
