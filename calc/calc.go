@@ -21,6 +21,8 @@ var (
 	ErrRange = errors.New("outside the published range")
 	// ErrUnknown marks a value that this release has no law for.
 	ErrUnknown = errors.New("not known yet")
+	// ErrChoked marks a gas that reaches its limiting velocity before the outlet.
+	ErrChoked = errors.New("choked")
 	// ErrNoConvergence marks an iteration that gave up on accepted input.
 	ErrNoConvergence = errors.New("no convergence")
 	// ErrNonFinite marks a result that overflowed on accepted input.

@@ -37,10 +37,19 @@ const (
 	DynamicViscosity
 	KinematicViscosity
 	VapourPressure
+	Temperature
+	Pressure
+	MolarMass
+	RelativeDensity
+	HeatCapacityRatio
+	CompressibilityFactor
 	// flow
 	VolumeFlow
 	MassFlow
 	Velocity
+	ReferenceVolumeFlow
+	ReferenceTemperature
+	ReferencePressure
 	// wall and regime
 	Roughness
 	LowerCriticalReynolds
@@ -59,6 +68,7 @@ const (
 	AtmosphericPressure
 	Altitude
 	Gravity
+	DistributionPoints
 	inputs // the number of inputs
 )
 
@@ -105,9 +115,18 @@ var bounds = [inputs]Bound{
 	DynamicViscosity:      {Name: "dynamic_viscosity", Unit: "Pa.s", Min: 1e-12, Max: 1e9},
 	KinematicViscosity:    {Name: "kinematic_viscosity", Unit: "m2/s", Min: 1e-15, Max: 1e12},
 	VapourPressure:        {Name: "vapour_pressure", Unit: "Pa", Min: 0, Max: 1e12},
+	Temperature:           {Name: "temperature", Unit: "K", Min: 0, OpenMin: true, Max: 1e5},
+	Pressure:              {Name: "pressure", Unit: "Pa", Min: 0, OpenMin: true, Max: 1e12},
+	MolarMass:             {Name: "molar_mass", Unit: "kg/mol", Min: 1e-4, Max: 10},
+	RelativeDensity:       {Name: "relative_density", Unit: "1", Min: 0.01, Max: 100},
+	HeatCapacityRatio:     {Name: "heat_capacity_ratio", Unit: "1", Min: 1, OpenMin: true, Max: 2},
+	CompressibilityFactor: {Name: "compressibility_factor", Unit: "1", Min: 0.01, Max: 10},
 	VolumeFlow:            {Name: "volume_flow", Unit: "m3/s", Min: 0, Max: 1e12},
 	MassFlow:              {Name: "mass_flow", Unit: "kg/s", Min: 0, Max: 1e15},
 	Velocity:              {Name: "velocity", Unit: "m/s", Min: 0, Max: 1e6},
+	ReferenceVolumeFlow:   {Name: "reference_volume_flow", Unit: "m3/s", Min: 0, Max: 1e12},
+	ReferenceTemperature:  {Name: "reference_temperature", Unit: "K", Min: 100, Max: 1000},
+	ReferencePressure:     {Name: "reference_pressure", Unit: "Pa", Min: 1e3, Max: 1e7},
 	Roughness:             {Name: "roughness", Unit: "m", Min: 0, Max: largest},
 	LowerCriticalReynolds: {Name: "lower_critical_reynolds", Unit: "1", Min: 1, Max: 1e6},
 	UpperCriticalReynolds: {Name: "upper_critical_reynolds", Unit: "1", Min: 1, Max: 1e6},
@@ -124,6 +143,7 @@ var bounds = [inputs]Bound{
 	AtmosphericPressure:   {Name: "atmospheric_pressure", Unit: "Pa", Min: 0, OpenMin: true, Max: 1e9},
 	Altitude:              {Name: "altitude", Unit: "m", Min: -2000, Max: 32000},
 	Gravity:               {Name: "gravity", Unit: "m/s2", Min: 1e-6, Max: 1e3},
+	DistributionPoints:    {Name: "distribution_points", Unit: "1", Min: 2, Max: 1000, Integer: true},
 }
 
 // Bound returns the stated interval of the input.

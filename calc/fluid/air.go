@@ -145,7 +145,7 @@ func Air(s StatePoint) (Properties, error) {
 	return Properties{
 		Density: rho, DynamicViscosity: mu, KinematicViscosity: mu / rho, Phase: Gas,
 		SoundSpeed: calc.Some(sound), HeatCapacityRatio: calc.Some(ratio), Source: airSource,
-		Temperature: calc.Some(s.Temperature), Pressure: calc.Some(s.Pressure),
+		Temperature: calc.Some(s.Temperature), Pressure: calc.Some(s.Pressure), MolarMass: calc.Some(airMolarMass),
 	}, nil
 }
 

@@ -24,5 +24,6 @@ type Properties struct {
 	HeatCapacityRatio  calc.Optional // of a gas, cp/cv or its isentropic exponent [1]
 	Temperature        calc.Optional // of the state, where it is known [K]
 	Pressure           calc.Optional // of the state, absolute, where it is known [Pa]
+	MolarMass          calc.Optional // of a gas, where it is known [kg/mol]
 	Source             string        // where the values come from ("given" for posted ones)
 }

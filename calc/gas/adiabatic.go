@@ -1,7 +1,6 @@
 package gas
 
 import (
-	"errors"
 	"math"
 
 	"borewright/calc"
@@ -83,7 +82,7 @@ func fannoSlope(m2, g float64) float64 {
 // vol. 1 (1953), chapter 6 (from memory).
 //
 // Accuracy: 1e-11, near choking (exit Mach number above 0.95) 1e-7; with a rise
-// 1e-8; testdata/gas/adiabatic.csv.
+// 1e-10; testdata/gas/adiabatic.csv.
 //
 // Errors: [calc.ErrDomain] for impossible input, [*ChokedError] if the flow
 // chokes before the outlet.
@@ -92,15 +91,14 @@ func Adiabatic(l Line, k Known) (Ends, error) {
 		return Ends{}, err
 	}
 	if l.Gas.HeatCapacityRatio == 0 {
-		return Ends{}, &calc.Error{Kind: calc.ErrDomain, Quantity: "heat_capacity_ratio", Min: 1, Max: 2,
-			Detail: "adiabatic flow needs the heat capacity ratio of the gas, such as 1.4 for air"}
+		return Ends{}, needsHeatCapacityRatio()
 	}
 	known := l.stateAt(k.Pressure, k.Temperature)
 	if known.Mach > 1 {
 		return Ends{}, &ChokedError{}
 	}
 	if l.Lift != 0 {
-		return l.adiabaticLift(known, k.AtOutlet)
+		return l.adiabaticRise(known, k.AtOutlet)
 	}
 	line := fannoLine{g: l.Gas.HeatCapacityRatio, n: l.Resistance, known: known.Mach * known.Mach, atOutlet: k.AtOutlet}
 	rise, err := line.rise()
@@ -108,6 +106,11 @@ func Adiabatic(l Line, k Known) (Ends, error) {
 		return Ends{}, err
 	}
 	return l.fannoEnds(known, rise, k.AtOutlet), nil
+}
+
+func needsHeatCapacityRatio() error {
+	return &calc.Error{Kind: calc.ErrDomain, Quantity: "heat_capacity_ratio", Min: 1, Max: 2,
+		Detail: "adiabatic flow needs the heat capacity ratio of the gas, such as 1.4 for air"}
 }
 
 // fannoEnds completes the other end from the rise of M² between the two, and
@@ -131,6 +134,10 @@ func (l *Line) fannoEnds(known State, rise float64, atOutlet bool) Ends {
 	}
 	squares := ends.In.Pressure * ends.In.Pressure * rise * (2 + (g-1)*(m2+other)) / (out * (2 + (g-1)*out))
 	ends.Drop = squares / (ends.In.Pressure + ends.Out.Pressure)
+	// V² = γ Rs T M² with T (2 + (γ - 1) M²) the same at both ends
+	total := known.Temperature * (2 + (g-1)*m2)
+	velocities := 2 * g * l.Gas.SpecificConstant * total * rise / ((2 + (g-1)*m2) * (2 + (g-1)*other))
+	ends.Faster = velocities / (ends.In.Velocity + ends.Out.Velocity)
 	return ends
 }
 
@@ -181,95 +188,4 @@ func (s *fannoLine) rise() (float64, error) {
 		}
 	}
 	return bracketed(s.known-low, f, s.slope)
-}
-
-// adiabaticLift integrates along the line with the weight of the gas, from the
-// known end to the other.
-func (l *Line) adiabaticLift(known State, atOutlet bool) (Ends, error) {
-	direction := 1.0
-	if atOutlet {
-		direction = -1
-	}
-	total := l.totalEnthalpy(known)
-	end, err := l.march(known, total, direction)
-	if err != nil {
-		return Ends{}, err
-	}
-	ends := Ends{In: known, Out: end}
-	if atOutlet {
-		ends = Ends{In: end, Out: known}
-	}
-	ends.Drop = ends.In.Pressure - ends.Out.Pressure
-	return ends, nil
-}
-
-// totalEnthalpy is cp T + V²/2 at the known end, where the level is taken as 0.
-func (l *Line) totalEnthalpy(s State) float64 {
-	g := l.Gas.HeatCapacityRatio
-	return g/(g-1)*l.Gas.SpecificConstant*s.Temperature + s.Velocity*s.Velocity/2
-}
-
-// stateByVelocity completes a state from its velocity by energy and continuity.
-func (l *Line) stateByVelocity(velocity, total, lift float64) State {
-	g := l.Gas.HeatCapacityRatio
-	temperature := (total - lift - velocity*velocity/2) * (g - 1) / (g * l.Gas.SpecificConstant)
-	return State{
-		Pressure:    l.MassFlux * l.Gas.SpecificConstant * temperature / velocity,
-		Temperature: temperature, Velocity: velocity, Mach: velocity / l.Gas.soundSpeed(temperature),
-	}
-}
-
-// acceleration is dlnV/dx of the insulated line with x from 0 to 1, from
-// momentum, energy and continuity: (γ M² N/2 + lift/(γ Rs T))/(1 - M²).
-func (l *Line) acceleration(s State) float64 {
-	g := l.Gas.HeatCapacityRatio
-	rt := l.Gas.SpecificConstant * s.Temperature
-	m2 := s.Mach * s.Mach
-	return (g*m2*l.Resistance/2 + l.Lift/(g*rt)) / (1 - m2)
-}
-
-var errChokesOnTheWay = errors.New("chokes on the way")
-
-// march integrates ln V by the classical Runge-Kutta method, halving the step
-// until two runs agree, and extrapolates the two.
-func (l *Line) march(from State, total, direction float64) (State, error) {
-	previous, err := l.run(from, total, direction, 64)
-	if err != nil {
-		return State{}, l.chokedOnTheWay()
-	}
-	for steps := 128; steps <= 1<<16; steps *= 2 {
-		next, err := l.run(from, total, direction, steps)
-		if err != nil {
-			return State{}, l.chokedOnTheWay()
-		}
-		if difference := next - previous; math.Abs(difference) <= 1e-10 {
-			return l.stateByVelocity(math.Exp(next+difference/15), total, direction*l.Lift), nil
-		}
-		previous = next
-	}
-	return State{}, l.chokedOnTheWay()
-}
-
-func (l *Line) chokedOnTheWay() error { return &ChokedError{} }
-
-// run returns ln V at the other end after the given number of steps.
-func (l *Line) run(from State, total, direction float64, steps int) (float64, error) {
-	h := direction / float64(steps)
-	y := math.Log(from.Velocity)
-	x := 0.0
-	rate := func(x, y float64) float64 {
-		return l.acceleration(l.stateByVelocity(math.Exp(y), total, x*l.Lift))
-	}
-	for i := range steps {
-		x = float64(i) * h
-		k1 := rate(x, y)
-		k2 := rate(x+h/2, y+h/2*k1)
-		k3 := rate(x+h/2, y+h/2*k2)
-		k4 := rate(x+h, y+h*k3)
-		y += h / 6 * (k1 + 2*k2 + 2*k3 + k4)
-		if s := l.stateByVelocity(math.Exp(y), total, (x+h)*l.Lift); !(s.Mach < 1) || !(s.Temperature > 0) {
-			return 0, errChokesOnTheWay
-		}
-	}
-	return y, nil
 }

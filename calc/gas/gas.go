@@ -9,10 +9,6 @@ import (
 	"borewright/calc"
 )
 
-// MolarGasConstant R [J/(mol K)], exact. Source: SI Brochure, 9th edition
-// (2019): product of the exact Avogadro and Boltzmann constants.
-const MolarGasConstant = 8.31446261815324
-
 // Gas is a perfect gas with a constant compressibility factor.
 type Gas struct {
 	SpecificConstant  float64 // Z R / M [J/(kg K)]
@@ -43,11 +39,25 @@ type Known struct {
 }
 
 // Ends are the states at both ends of the line. Drop is the fall of static
-// pressure from inlet to outlet, formed without subtracting the two pressures,
-// so that a slow gas loses no digits.
+// pressure from inlet to outlet, Weight the part of it that lifts the gas, Faster
+// what the velocity gains: each formed without subtracting the ends where they are
+// close, so that a slow gas loses no digits.
 type Ends struct {
 	In, Out State
-	Drop    float64
+	Drop    float64 // [Pa]
+	Weight  float64 // [Pa]
+	Faster  float64 // [m/s]
+}
+
+// At is the state of the known end, its velocity by continuity.
+func (l *Line) At(k Known) State { return l.stateAt(k.Pressure, k.Temperature) }
+
+// Part is the line over a part of its length, from 0 to 1.
+func (l *Line) Part(part float64) Line {
+	p := *l
+	p.Resistance *= part
+	p.Lift *= part
+	return p
 }
 
 // stateAt completes a state from pressure and temperature by continuity.

@@ -176,7 +176,7 @@ var laws = []law{{"isothermal", gas.Isothermal}, {"adiabatic", gas.Adiabatic}}
 func drawLine(t *rapid.T) (gas.Line, gas.Known) {
 	line := gas.Line{
 		Gas: gas.Gas{
-			SpecificConstant:  gas.MolarGasConstant / rapid.Float64Range(2e-3, 0.15).Draw(t, "molar mass"),
+			SpecificConstant:  calc.MolarGasConstant / rapid.Float64Range(2e-3, 0.15).Draw(t, "molar mass"),
 			HeatCapacityRatio: rapid.Float64Range(1.05, 1.67).Draw(t, "gamma"),
 		},
 		Resistance: math.Exp(rapid.Float64Range(-3, 9).Draw(t, "ln N")),
@@ -233,6 +233,27 @@ func TestDownhillAndBack(t *testing.T) {
 		level, err := law.ends(line, known)
 		if err != nil || !(ends.Out.Pressure > level.Out.Pressure) {
 			t.Errorf("%s: downhill leaves %v Pa, level %v Pa, %v", law.name, ends.Out.Pressure, level.Out.Pressure, err)
+		}
+	}
+}
+
+// Falling slowly, a gas gains more by its weight than friction takes.
+func TestWeightExceedsFriction(t *testing.T) {
+	for _, law := range laws {
+		line := gas.Line{Gas: gas.Gas{SpecificConstant: 296.8, HeatCapacityRatio: 1.4}, MassFlux: 17.825, Resistance: 4, Lift: -9.8}
+		known := gas.Known{Pressure: 8e5, Temperature: 298.15}
+		ends, err := law.ends(line, known)
+		if err != nil {
+			t.Fatal(err)
+		}
+		density := 8e5 / (296.8 * 298.15)
+		want := 4*17.825*17.825/(2*density) - 9.8*density // nearly incompressible
+		if math.Abs(ends.Drop/want-1) > 1e-3 || math.Abs(ends.Weight/(-9.8*density)-1) > 1e-4 {
+			t.Errorf("%s: drop %v Pa, want about %v; weight %v", law.name, ends.Drop, want, ends.Weight)
+		}
+		back, err := law.ends(line, gas.Known{Pressure: ends.Out.Pressure, Temperature: ends.Out.Temperature, AtOutlet: true})
+		if err != nil || math.Abs(back.In.Pressure/known.Pressure-1) > 1e-12 || math.Abs(back.Drop/ends.Drop-1) > 1e-7 {
+			t.Errorf("%s: back %+v, %v", law.name, back, err)
 		}
 	}
 }

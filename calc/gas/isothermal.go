@@ -48,16 +48,26 @@ func Isothermal(l Line, k Known) (Ends, error) {
 	if err != nil {
 		return Ends{}, err
 	}
+	ends := l.isothermalEnds(math.Sqrt(s.known-difference), k, difference)
 	if k.AtOutlet {
-		in := math.Sqrt(s.known + difference)
-		return l.isothermalEnds(in, k.Pressure, k.Temperature, difference), nil
+		ends = l.isothermalEnds(math.Sqrt(s.known+difference), k, difference)
 	}
-	out := math.Sqrt(s.known - difference)
-	return l.isothermalEnds(k.Pressure, out, k.Temperature, difference), nil
+	ends.Weight, err = s.weight(&l, &ends)
+	return ends, err
 }
 
-func (l *Line) isothermalEnds(in, out, temperature, difference float64) Ends {
-	return Ends{In: l.stateAt(in, temperature), Out: l.stateAt(out, temperature), Drop: difference / (in + out)}
+// isothermalEnds puts the known end and the other one, at the given pressure, in
+// their places; difference is that of the squares of the pressures.
+func (l *Line) isothermalEnds(other float64, k Known, difference float64) Ends {
+	in, out := k.Pressure, other
+	if k.AtOutlet {
+		in, out = other, k.Pressure
+	}
+	drop := difference / (in + out)
+	return Ends{
+		In: l.stateAt(in, k.Temperature), Out: l.stateAt(out, k.Temperature), Drop: drop,
+		Faster: l.MassFlux * (l.Gas.SpecificConstant * k.Temperature) * (drop / in / out),
+	}
 }
 
 // isothermalLine is the integral in y = p², with d = y1 - y2 as its unknown.
@@ -121,34 +131,44 @@ func (s *isothermalLine) difference() (float64, error) {
 	return bracketed(far, f, s.slope)
 }
 
-// farthest is a difference at which span is at least 1. On the choking side of
-// the line it is the end of the subsonic range, and the flow chokes if span
-// stays below 1 there; on the other side it is the balance of weight and
-// friction, or a pressure found by doubling.
+// farthest is a difference at which span is at least 1. Where the pressure falls
+// towards the limiting velocity that is the end of the subsonic range, and the flow
+// chokes if span stays below 1 there. Where it runs against the balance of weight
+// and friction, as it does upstream in a falling line, it is that balance, which no
+// line is long enough to reach; else it is found by doubling.
 func (s *isothermalLine) farthest(drive float64, f func(float64) float64) (float64, error) {
-	towardsChoking := s.known - s.a // y falls to a
+	choking := s.known - s.a // y falls to a
 	switch {
-	case drive > 0 && !s.atOutlet, drive < 0 && s.atOutlet:
-		far := towardsChoking
-		if s.atOutlet {
-			far = -far
+	case !s.atOutlet && drive > 0:
+		return s.notChoked(choking)
+	case s.atOutlet && s.c < 0:
+		balance := -s.a*s.n/s.c - s.known
+		if -balance > choking {
+			return s.notChoked(-choking)
 		}
-		if reach := s.span(far); reach < 1 {
-			return 0, &ChokedError{Resistance: s.n * reach}
-		}
-		return far, nil
-	case drive < 0: // downhill from the inlet: y rises to the balance
-		return s.known + s.a*s.n/s.c, nil
+		return balance, nil
 	}
-	far := s.a * s.n
+	far := drive
 	for f(far) < 0 {
-		far *= 4
+		far *= 2
 		if math.IsInf(far, 0) {
 			return 0, &calc.Error{Kind: calc.ErrNonFinite, Quantity: "inlet_pressure", Value: math.Sqrt(s.known)}
 		}
 	}
 	return far, nil
 }
+
+// notChoked refuses a line that reaches its limiting velocity on the way.
+func (s *isothermalLine) notChoked(far float64) (float64, error) {
+	if reach := s.span(far); reach < 1 {
+		return 0, &ChokedError{Resistance: s.n * reach}
+	}
+	return far, nil
+}
+
+// newtonSteps is after how many steps a root that Newton's method approaches too
+// slowly, as it does at the limiting velocity, is halved towards as well.
+const newtonSteps = 20
 
 // bracketed finds the root of f between 0, where f is -1, and far, where it is
 // not negative: Newton's method inside a bracket that bisects when a step leaves it.
@@ -161,7 +181,7 @@ func bracketed(far float64, f, slope func(float64) float64) (float64, error) {
 		}
 	}
 	last := math.Inf(1)
-	for range 200 {
+	for i := range 200 {
 		v := f(x)
 		if v < 0 {
 			lo = x
@@ -169,7 +189,7 @@ func bracketed(far float64, f, slope func(float64) float64) (float64, error) {
 			hi = x
 		}
 		next := x - v/slope(x)
-		if !((next-lo)*(hi-next) >= 0) {
+		if !((next-lo)*(hi-next) >= 0) || i > newtonSteps && i%2 == 0 {
 			next = lo + (hi-lo)/2
 		}
 		step := math.Abs(next - x)
@@ -179,4 +199,43 @@ func bracketed(far float64, f, slope func(float64) float64) (float64, error) {
 		last, x = step, next
 	}
 	return 0, &calc.Error{Kind: calc.ErrNoConvergence, Quantity: "outlet_pressure", Value: x}
+}
+
+// flat is the drop over pressure below which the weight is integrated along the
+// line: along the pressure the balance of weight and friction would divide by zero.
+const flat = 1e-3
+
+// weight is ∫ ρ g dz over the line, by Gauss and Legendre: along the pressure,
+// where the limiting velocity leaves no trace, or along the line.
+func (s *isothermalLine) weight(l *Line, ends *Ends) (float64, error) {
+	if l.Lift == 0 {
+		return 0, nil
+	}
+	rt := l.Gas.SpecificConstant * ends.In.Temperature
+	if math.Abs(ends.Drop) > flat*ends.In.Pressure {
+		sum := 0.0
+		for i, x := range legendre.nodes {
+			p := ends.Out.Pressure + x*ends.Drop
+			sum += legendre.weights[i] * (p*p - s.a) / (s.a*s.n + s.c*p*p)
+		}
+		return 2 * l.Lift / rt * ends.Drop * sum, nil
+	}
+	sum := 0.0
+	for i, x := range legendre.nodes {
+		part := l.Part(x)
+		inner, err := part.isothermalPart(ends)
+		if err != nil {
+			return 0, err
+		}
+		sum += legendre.weights[i] * inner
+	}
+	return l.Lift / rt * sum, nil
+}
+
+// isothermalPart is the pressure at the end of this first part of a line.
+func (l *Line) isothermalPart(ends *Ends) (float64, error) {
+	s := l.isothermal(ends.In.Temperature)
+	s.known = ends.In.Pressure * ends.In.Pressure
+	d, err := s.difference()
+	return math.Sqrt(s.known - d), err
 }

@@ -23,6 +23,12 @@ func (in *Input) velocityHeadRise(from, to float64) float64 {
 	return in.Fluid.Density / 2 * (to - from) * (to + from)
 }
 
+// gaugeDrop is what gauges at both ends show, Δp - ρs g z [Pa]: the pressure around
+// the line falls with height too.
+func (out *Result) gaugeDrop(in *Input) float64 {
+	return out.Pressure.StaticPressureDrop.Value - in.SurroundingsDensity.Value*in.Gravity*in.Rise.Value
+}
+
 // headLoss is h = Δpt/(ρ g) [m].
 func (out *Result) headLoss(in *Input) float64 {
 	return out.Pressure.TotalPressureLoss / (in.Fluid.Density * in.Gravity)

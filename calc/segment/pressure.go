@@ -3,7 +3,6 @@ package segment
 import (
 	"borewright/calc"
 	"borewright/calc/fitting"
-	"borewright/calc/fluid"
 )
 
 // PressureDrop fills the whole result.
@@ -38,10 +37,21 @@ import (
 // Validity: steady flow of constant density, kinetic energy factor 1. With a
 // free surface the depth is given: friction slope instead of a static drop. Where
 // both regimes are possible the plain values are those of the larger friction. At
-// rest only the level counts. A gas given by its density is taken as
+// rest only the level counts. A gas given by its density, or by request, is taken as
 // incompressible, which a 10 % drop of absolute pressure makes doubtful and more
 // than 40 %, or more than Mach number 0.3, wrong; both are judged only where the
 // pressure or the sound speed is known.
+//
+// Any other gas is carried isothermally or adiabatically by [gas.Isothermal] or
+// [gas.Adiabatic] from the end where its state is known: the inlet, or the outlet
+// where the outlet pressure is given. The friction factor is that of the known
+// state, exact in isothermal flow, where Reynolds number and viscosity stay the same.
+// Loss coefficients, and rated components by the coefficient that they have at the
+// known state, are spread over the length; another section or a reservoir at an end is
+// passed without loss by [gas.Across] (common practice, both). The friction drop is
+// the share of friction in the losses, the elevation drop the integral of the weight,
+// the acceleration drop what is left; head and power are at the known state. A flow
+// that chokes is refused, or answered at the largest flow that does not.
 //
 // The lowest pressure is that of a straight line between the two levels, at or
 // between its ends. The place of the fittings in the line is not known, so that it
@@ -56,7 +66,7 @@ import (
 //
 // Errors: those of its parts; [calc.ErrDomain] for a pressure given at both ends,
 // a pressure or an end with a free surface, and a jet at the inlet; [calc.ErrRange]
-// where a gas cannot be taken as incompressible; a [*fitting.ItemError] for a
+// where a gas cannot be taken as incompressible; a [*ChokedError]; a [*fitting.ItemError] for a
 // fitting and an [*EndError] for the section of an end; [calc.ErrNonFinite] on
 // overflow. With an error the result is empty.
 func PressureDrop(in *Input, out *Result) error {
@@ -74,7 +84,7 @@ func (in *Input) pressureDrop(out *Result) error {
 	if err := in.friction(out); err != nil {
 		return err
 	}
-	loss, err := fitting.LossOf(in.Fittings, fitting.Conditions{Density: in.Fluid.Density, Velocity: out.Flow.Velocity, VolumeFlow: out.Flow.VolumeFlow})
+	loss, err := in.lossOf(out)
 	if err != nil {
 		return err
 	}
@@ -83,7 +93,24 @@ func (in *Input) pressureDrop(out *Result) error {
 	if out.Section.FreeSurface {
 		return out.openChannel(in)
 	}
-	return out.closedLine(in, loss.Gain)
+	model, err := in.model()
+	if err != nil {
+		return err
+	}
+	if model == Isothermal || model == Adiabatic {
+		err = out.gasLine(in, model)
+	} else {
+		err = out.closedLine(in, loss.Gain, model)
+	}
+	if err == nil && in.SurroundingsDensity.Valid {
+		out.Pressure.GaugePressureDrop = calc.Some(out.gaugeDrop(in))
+	}
+	return err
+}
+
+// lossOf asks package fitting.
+func (in *Input) lossOf(out *Result) (fitting.Loss, error) {
+	return fitting.LossOf(in.Fittings, fitting.Conditions{Density: in.Fluid.Density, Velocity: out.Flow.Velocity, VolumeFlow: out.Flow.VolumeFlow})
 }
 
 func (in *Input) checkSegment() error {
@@ -148,12 +175,13 @@ func (out *Result) lossConditions(in *Input, coefficients int) {
 }
 
 // closedLine closes the account of a section that runs full.
-func (out *Result) closedLine(in *Input, gain float64) error {
+func (out *Result) closedLine(in *Input, gain float64, model GasModel) error {
 	if err := out.endVelocities(in); err != nil {
 		return err
 	}
-	out.Conditions.GasIncompressible = in.Fluid.Phase == fluid.Gas
+	out.Conditions.GasIncompressible = model == Incompressible
 	p := &out.Pressure
+	p.GasModel = model
 	elevation, acceleration := in.elevationDrop(), out.accelerationDrop(in)
 	rest := p.FittingsDrop + elevation + acceleration
 	p.ElevationDrop, p.AccelerationDrop = calc.Some(elevation), calc.Some(acceleration)

@@ -36,7 +36,7 @@ func Regime(in *Input, out *Result) error {
 }
 
 func (in *Input) regime(out *Result) error {
-	out.Fluid, out.Friction, out.Pressure, out.Conditions = in.Fluid, friction.Result{}, Pressure{}, Conditions{} // the rest is set below
+	out.Fluid, out.Friction, out.Pressure, out.Conditions, out.Gas = in.Fluid, friction.Result{}, Pressure{}, Conditions{}, GasRun{} // the rest is set below
 	var err error
 	if err = in.Section.Into(&out.Section); err != nil {
 		return err

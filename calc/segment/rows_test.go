@@ -30,9 +30,13 @@ func (r row) number(t *testing.T, column string) float64 {
 	return v
 }
 
-func referenceRows(t *testing.T) []row {
+func referenceRows(t *testing.T) []row { return rowsOf(t, "segment/segment.csv") }
+
+func gasRows(t *testing.T, name string) []row { return rowsOf(t, "gas/"+name) }
+
+func rowsOf(t *testing.T, name string) []row {
 	t.Helper()
-	file, err := os.Open("../../testdata/segment/segment.csv")
+	file, err := os.Open("../../testdata/" + name)
 	if err != nil {
 		t.Fatal(err)
 	}

@@ -45,6 +45,10 @@ type Input struct {
 	InletPressure  calc.Optional // static, absolute [Pa]; at most one of the two
 	OutletPressure calc.Optional
 	Gravity        float64 // [m/s²]
+
+	GasModel            GasModel
+	AnswerAtChoking     bool          // a flow that chokes is answered at the largest one that does not
+	SurroundingsDensity calc.Optional // of the air around the line [kg/m³]
 }
 
 // StandardGravity is the conventional value, 9.80665 m/s² exactly.
@@ -79,6 +83,16 @@ type Pressure struct {
 	OutletPressure calc.Optional
 	LowestPressure calc.Optional
 
+	GaugePressureDrop calc.Optional // what gauges at both ends show [Pa]
+
+	GasModel          GasModel // zero for a liquid
+	InletTemperature  calc.Optional
+	OutletTemperature calc.Optional
+	MachIn            calc.Optional
+	MachOut           calc.Optional
+	ChokingMassFlow   calc.Optional // the largest that passes, where more was asked for [kg/s]
+	AskedMassFlow     calc.Optional // [kg/s]
+
 	FrictionSlope calc.Optional // only with a free surface [1]
 	BedSlope      calc.Optional // -rise/length [1]
 }
@@ -96,7 +110,10 @@ type Conditions struct {
 	ConstantLossLowRe   bool // loss coefficient used below Re 1e4
 	ConstantLossLaminar bool
 	EndLossMissing      bool // a reservoir end and no loss coefficient at all
-	GasIncompressible   bool // a gas of given density, taken as incompressible
+	GasIncompressible   bool // a gas taken as incompressible
+	Choked              bool // answered at the largest flow, more was asked for
+
+	GasRiseWithoutSurroundings bool
 }
 
 // Result keeps every intermediate value of the segment. The functions of this
@@ -109,4 +126,5 @@ type Result struct {
 	Friction   friction.Result
 	Pressure   Pressure
 	Conditions Conditions
+	Gas        GasRun // of a gas that is carried isothermally or adiabatically
 }

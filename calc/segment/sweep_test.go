@@ -24,6 +24,23 @@ var swept = map[string]func(*segment.Input, *segment.Result) error{
 	"Regime":       segment.Regime,
 	"Friction":     segment.Friction,
 	"PressureDrop": segment.PressureDrop,
+	"Distribution": func(in *segment.Input, out *segment.Result) error {
+		err := segment.PressureDrop(in, out)
+		if err == nil && out.Pressure.GasModel != segment.Isothermal && out.Pressure.GasModel != segment.Adiabatic {
+			return nil // its refusal is tested elsewhere
+		}
+		if err == nil {
+			var points []segment.GasPoint
+			points, err = segment.Distribution(points, in, out, 5)
+			for _, p := range points {
+				out.Pressure.FrictionDrop += p.Pressure + p.Velocity // so that the sweep sees a number that is not finite
+			}
+		}
+		if err != nil {
+			*out = segment.Result{}
+		}
+		return err
+	},
 }
 
 // numbers are what a sweep varies. A number whose choice is 0 is left out where it
@@ -62,7 +79,20 @@ func (v *numbers) input(c choices) segment.Input {
 		in.Inlet = segment.End{Kind: segment.EndKind(c / 48 % 3), Section: section.Section{Shape: section.Circle{Diameter: v.end}}}
 		in.Outlet = segment.End{Kind: segment.EndKind(c / 144 % 5), Section: in.Inlet.Section}
 	}
+	v.gas(&in, c)
 	return in
+}
+
+// gas makes every third segment with a gas in it one whose state is known.
+func (v *numbers) gas(in *segment.Input, c choices) {
+	if in.Fluid.Phase != fluid.Gas || c/720%3 == 0 {
+		return
+	}
+	in.Fluid.Temperature = calc.Some(300)
+	in.Fluid.Pressure = calc.Some(v.pressure)
+	in.Fluid.HeatCapacityRatio = calc.Some(1.4)
+	in.GasModel = segment.GasModel(c / 720 % 4)
+	in.AnswerAtChoking = c/2880%2 == 1
 }
 
 func (v *numbers) shape(c choices) section.Shape {
