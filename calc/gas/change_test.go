@@ -66,8 +66,8 @@ func TestAcrossAndBack(t *testing.T) {
 		if got := line.At(gas.Known{Pressure: there.State.Pressure, Temperature: there.State.Temperature}).Velocity; math.Abs(got-there.State.Velocity) > 1e-13*got {
 			t.Fatalf("mass is lost: %v, %v", got, there.State.Velocity)
 		}
-		if there.State.Mach > 0.9/math.Sqrt(g.HeatCapacityRatio) {
-			return // the way back is ill-conditioned near the limit
+		if max(s.Mach, there.State.Mach) > 0.9/math.Sqrt(g.HeatCapacityRatio) {
+			return // near the limit one of the ways is ill-conditioned
 		}
 		back, err := gas.Across(gas.Change{Gas: g, Known: there.State, MassFlux: flux, Adiabatic: adiabatic})
 		if err != nil || math.Abs(back.State.Pressure/s.Pressure-1) > 1e-11 || math.Abs(back.Rise+there.Rise) > 1e-11*s.Pressure {
