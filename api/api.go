@@ -72,6 +72,7 @@ func New(o Options) (*API, error) {
 func (a *API) routes() {
 	for path, door := range map[string]document.Door{
 		"/v1/section":  document.SectionDoor,
+		"/v1/fluid":    document.FluidDoor,
 		"/v1/regime":   document.RegimeDoor,
 		"/v1/friction": document.FrictionDoor,
 		"/v1/segment":  document.SegmentDoor,

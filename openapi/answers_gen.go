@@ -45,6 +45,30 @@ func (e AnsweredLaw) Valid() bool {
 	}
 }
 
+// Defines values for AnsweredPressureGasModel.
+const (
+	AnsweredPressureGasModelAdiabatic      AnsweredPressureGasModel = "adiabatic"
+	AnsweredPressureGasModelIncompressible AnsweredPressureGasModel = "incompressible"
+	AnsweredPressureGasModelIsothermal     AnsweredPressureGasModel = "isothermal"
+	AnsweredPressureGasModelLessThannil    AnsweredPressureGasModel = "<nil>"
+)
+
+// Valid indicates whether the value is a known member of the AnsweredPressureGasModel enum.
+func (e AnsweredPressureGasModel) Valid() bool {
+	switch e {
+	case AnsweredPressureGasModelAdiabatic:
+		return true
+	case AnsweredPressureGasModelIncompressible:
+		return true
+	case AnsweredPressureGasModelIsothermal:
+		return true
+	case AnsweredPressureGasModelLessThannil:
+		return true
+	default:
+		return false
+	}
+}
+
 // Defines values for FlowRegime.
 const (
 	FlowRegimeAtRest       FlowRegime = "at_rest"
@@ -173,10 +197,19 @@ func (e RoughnessRegime) Valid() bool {
 
 // AnsweredFlow Block flow of an answer. Every key is there; what has no meaning in the case is null.
 //
-// Example: {"mass_flow":33.33,"velocity":1.7877069327749544,"volume_flow":0.03333333333333333}
+// Example: {"mass_flow":33.33,"reference_pressure":null,"reference_temperature":null,"reference_volume_flow":null,"velocity":1.7877069327749544,"volume_flow":0.03333333333333333}
 type AnsweredFlow struct {
 	// MassFlow Mass flow.
 	MassFlow float64 `json:"mass_flow"`
+
+	// ReferencePressure Pressure of the reference state, absolute.
+	ReferencePressure *float64 `json:"reference_pressure"`
+
+	// ReferenceTemperature Temperature of the reference state.
+	ReferenceTemperature *float64 `json:"reference_temperature"`
+
+	// ReferenceVolumeFlow Volume flow as it was stated, at a reference state; null where none was.
+	ReferenceVolumeFlow *float64 `json:"reference_volume_flow"`
 
 	// Velocity Volume flow over true flow area.
 	Velocity float64 `json:"velocity"`
@@ -187,13 +220,16 @@ type AnsweredFlow struct {
 
 // AnsweredFluid Block fluid of an answer. Every key is there; what has no meaning in the case is null.
 //
-// Example: {"density":999.9,"dynamic_viscosity":0.00147,"kinematic_viscosity":0.0000014701470147014701,"phase":"liquid","property_source":"given","sound_speed":null,"vapour_pressure":935}
+// Example: {"density":999.9,"dynamic_viscosity":0.00147,"heat_capacity_ratio":null,"kinematic_viscosity":0.0000014701470147014701,"phase":"liquid","pressure":null,"property_source":"given","sound_speed":null,"temperature":null,"vapour_pressure":935}
 type AnsweredFluid struct {
 	// Density Density.
 	Density float64 `json:"density"`
 
 	// DynamicViscosity Dynamic viscosity.
 	DynamicViscosity float64 `json:"dynamic_viscosity"`
+
+	// HeatCapacityRatio Heat capacity ratio of a gas, of steam its isentropic exponent; null when not known.
+	HeatCapacityRatio *float64 `json:"heat_capacity_ratio"`
 
 	// KinematicViscosity Dynamic viscosity over density.
 	KinematicViscosity float64 `json:"kinematic_viscosity"`
@@ -203,6 +239,9 @@ type AnsweredFluid struct {
 	// Example: liquid
 	Phase Phase `json:"phase"`
 
+	// Pressure Pressure of the state, absolute; null when not known.
+	Pressure *float64 `json:"pressure"`
+
 	// PropertySource Where the values come from.
 	//
 	// Example: given
@@ -210,6 +249,9 @@ type AnsweredFluid struct {
 
 	// SoundSpeed Speed of sound; null when not known.
 	SoundSpeed *float64 `json:"sound_speed"`
+
+	// Temperature Temperature of the state; null when not known.
+	Temperature *float64 `json:"temperature"`
 
 	// VapourPressure Vapour pressure, absolute; null when not known.
 	VapourPressure *float64 `json:"vapour_pressure"`
@@ -261,13 +303,16 @@ type AnsweredLaw string
 
 // AnsweredPressure Block pressure of an answer. Every key is there; what has no meaning in the case is null.
 //
-// Example: {"acceleration_drop":0,"bed_slope":null,"elevation_drop":31378.141871999997,"fittings_drop":13820.815071276398,"fluid_power":2023.8151740531064,"friction_drop":15515.498278316794,"friction_drop_if_laminar":null,"friction_drop_if_turbulent":null,"friction_gradient":184.7083128371047,"friction_slope":null,"head_loss":2.9917706122193235,"inlet_pressure":521325,"lowest_pressure":460610.5447784068,"outlet_pressure":460610.5447784068,"static_pressure_drop":60714.45522159319,"static_pressure_drop_if_laminar":null,"static_pressure_drop_if_turbulent":null,"total_pressure_loss":29336.31334959319}
+// Example: {"acceleration_drop":0,"bed_slope":null,"choking_mass_flow":null,"elevation_drop":31378.141871999997,"fittings_drop":13820.815071276398,"fluid_power":2023.8151740531064,"friction_drop":15515.498278316794,"friction_drop_if_laminar":null,"friction_drop_if_turbulent":null,"friction_gradient":184.7083128371047,"friction_slope":null,"gas_model":null,"gauge_pressure_drop":null,"head_loss":2.9917706122193235,"inlet_pressure":521325,"inlet_temperature":null,"inlet_velocity":1.7877069327749544,"lowest_pressure":460610.5447784068,"mach_number_in":null,"mach_number_out":null,"outlet_pressure":460610.5447784068,"outlet_temperature":null,"outlet_velocity":1.7877069327749544,"static_pressure_drop":60714.45522159319,"static_pressure_drop_if_laminar":null,"static_pressure_drop_if_turbulent":null,"total_pressure_loss":29336.31334959319}
 type AnsweredPressure struct {
 	// AccelerationDrop Half the density times the difference of the squares of outlet and inlet velocity.
 	AccelerationDrop *float64 `json:"acceleration_drop"`
 
 	// BedSlope With a free surface: minus rise over length.
 	BedSlope *float64 `json:"bed_slope"`
+
+	// ChokingMassFlow The largest mass flow that passes, where more was asked for and answer_at_choking was set.
+	ChokingMassFlow *float64 `json:"choking_mass_flow"`
 
 	// ElevationDrop Density times gravity times rise; null with a free surface.
 	ElevationDrop *float64 `json:"elevation_drop"`
@@ -293,17 +338,43 @@ type AnsweredPressure struct {
 	// FrictionSlope With a free surface: friction_drop over density, gravity and length.
 	FrictionSlope *float64 `json:"friction_slope"`
 
+	// GasModel How a gas was carried; null for a liquid.
+	//
+	// Example: isothermal
+	GasModel *AnsweredPressureGasModel `json:"gas_model"`
+
+	// GaugePressureDrop Static pressure drop as gauges at both ends show it, against the surroundings; null without surroundings.
+	GaugePressureDrop *float64 `json:"gauge_pressure_drop"`
+
 	// HeadLoss total_pressure_loss in metres of the fluid.
 	HeadLoss float64 `json:"head_loss"`
 
 	// InletPressure Static pressure at the inlet, absolute.
 	InletPressure *float64 `json:"inlet_pressure"`
 
+	// InletTemperature Temperature of a gas at the inlet; null where none is carried isothermally or adiabatically.
+	InletTemperature *float64 `json:"inlet_temperature"`
+
+	// InletVelocity Velocity at the inlet end, 0 in a reservoir; null with a free surface.
+	InletVelocity *float64 `json:"inlet_velocity"`
+
 	// LowestPressure Lowest static pressure on the way, absolute; the fittings are taken at the inlet end where that is lower.
 	LowestPressure *float64 `json:"lowest_pressure"`
 
+	// MachNumberIn Mach number at the inlet end; null for a liquid and where the heat capacity ratio is not known.
+	MachNumberIn *float64 `json:"mach_number_in"`
+
+	// MachNumberOut Mach number at the outlet end; null for a liquid and where the heat capacity ratio is not known.
+	MachNumberOut *float64 `json:"mach_number_out"`
+
 	// OutletPressure Static pressure at the outlet, absolute.
 	OutletPressure *float64 `json:"outlet_pressure"`
+
+	// OutletTemperature Temperature of a gas at the outlet; null where none is carried isothermally or adiabatically.
+	OutletTemperature *float64 `json:"outlet_temperature"`
+
+	// OutletVelocity Velocity at the outlet end, 0 in a reservoir; null with a free surface.
+	OutletVelocity *float64 `json:"outlet_velocity"`
 
 	// StaticPressureDrop Static pressure at the inlet less that at the outlet: the sum of friction, fittings, elevation and acceleration.
 	StaticPressureDrop *float64 `json:"static_pressure_drop"`
@@ -317,6 +388,11 @@ type AnsweredPressure struct {
 	// TotalPressureLoss friction_drop plus fittings_drop.
 	TotalPressureLoss float64 `json:"total_pressure_loss"`
 }
+
+// AnsweredPressureGasModel How a gas was carried; null for a liquid.
+//
+// Example: isothermal
+type AnsweredPressureGasModel string
 
 // AnsweredRegime Block regime of an answer. Every key is there; what has no meaning in the case is null.
 //
@@ -414,6 +490,31 @@ type ConversionAnswer struct {
 	Value float64 `json:"value"`
 }
 
+// Distribution A gas at equal steps along the line, where distribution_points asks for it.
+//
+// Example: [{"distance":0,"mach_number":0.056,"pressure":800000,"temperature":298.15,"velocity":19.7}]
+type Distribution = []DistributionPoint
+
+// DistributionPoint A gas at one place of the line.
+//
+// Example: {"distance":0,"mach_number":0.056,"pressure":800000,"temperature":298.15,"velocity":19.7}
+type DistributionPoint struct {
+	// Distance Developed length from the inlet.
+	Distance float64 `json:"distance"`
+
+	// MachNumber Mach number; null where the heat capacity ratio is not known.
+	MachNumber *float64 `json:"mach_number"`
+
+	// Pressure Static pressure, absolute.
+	Pressure float64 `json:"pressure"`
+
+	// Temperature Static temperature.
+	Temperature float64 `json:"temperature"`
+
+	// Velocity Velocity.
+	Velocity float64 `json:"velocity"`
+}
+
 // Engine What calculated. Equal method revisions give equal numbers on one platform.
 //
 // Example: {"method_revision":1,"platform":"linux/amd64","version":"0.1.0"}
@@ -444,9 +545,49 @@ type Fingerprint = string
 // Example: turbulent
 type FlowRegime string
 
+// FluidAnswer Answer of the fluid door.
+//
+// Example: {"engine":{"method_revision":1,"platform":"linux/amd64","version":"0.1.0"},"fingerprint":"937edcce5fd2aa836057ac9c43ee5ffd82730e32019e0194bef6bf81e340fca9","fluid":{"density":3.672744326910421,"dynamic_viscosity":0.000014475310357740536,"heat_capacity_ratio":1.2964208087239462,"kinematic_viscosity":0.000003941279073438098,"phase":"gas","pressure":701325.0000000013,"property_source":"IAPWS R7-97(2012) (IF97); viscosity IAPWS R12-08","sound_speed":497.5506621256228,"temperature":438.1790408777029,"vapour_pressure":null},"id":"STM-501","notes":[{"code":"defaults_used","level":"info","text":"Taken as default: atmospheric_pressure 101325 Pa."}],"units":{"density":"kg/m3","dynamic_viscosity":"Pa.s","heat_capacity_ratio":"1","kinematic_viscosity":"m2/s","pressure":"Pa","sound_speed":"m/s","temperature":"K","vapour_pressure":"Pa"}}
+type FluidAnswer struct {
+	// Engine What calculated. Equal method revisions give equal numbers on one platform.
+	//
+	// Example: {"method_revision":1,"platform":"linux/amd64","version":"0.1.0"}
+	Engine Engine `json:"engine"`
+
+	// Fingerprint SHA-256 of the normalised inputs and the method revision; equal inputs give it equally through every door. id, title and tags have no part in it.
+	//
+	// Example: 6e3d9d8e2f4b7a0c1d5e8f9a0b1c2d3e4f5a6b7c8d9e0f1a2b3c4d5e6f7a8b9c
+	Fingerprint Fingerprint `json:"fingerprint"`
+
+	// Fluid Block fluid of an answer. Every key is there; what has no meaning in the case is null.
+	//
+	// Example: {"density":999.9,"dynamic_viscosity":0.00147,"heat_capacity_ratio":null,"kinematic_viscosity":0.0000014701470147014701,"phase":"liquid","pressure":null,"property_source":"given","sound_speed":null,"temperature":null,"vapour_pressure":935}
+	Fluid AnsweredFluid `json:"fluid"`
+
+	// Id Free text; it has no part in the calculation or the fingerprint.
+	//
+	// Example: CHW-101
+	Id *Name `json:"id,omitempty"`
+
+	// Notes What a reader of the answer must know.
+	//
+	// Example: [{"code":"defaults_used","level":"info","text":"Taken as default: friction_law colebrook_white."}]
+	Notes Notes `json:"notes"`
+
+	// Title Free text; it has no part in the calculation or the fingerprint.
+	//
+	// Example: CHW-101
+	Title *Name `json:"title,omitempty"`
+
+	// Units Unit of each numeric field of the answer.
+	//
+	// Example: {"flow_area":"m2"}
+	Units Units `json:"units"`
+}
+
 // FrictionAnswer Answer of the friction door.
 //
-// Example: {"engine":{"method_revision":1,"platform":"linux/amd64","version":"0.1.0"},"fingerprint":"96bd9ee50c2b30d9c2f8a2f89f3479d53ba1f804a447df0d31646746f8ac84a4","flow":{"mass_flow":1.4444444444444444,"velocity":0.7982652533271429,"volume_flow":0.0015188690267554622},"fluid":{"density":951,"dynamic_viscosity":0.000255,"kinematic_viscosity":2.681388012618297e-7,"phase":"liquid","property_source":"given","sound_speed":null,"vapour_pressure":null},"friction":{"darcy_friction_factor":0.032842727288929036,"darcy_friction_factor_if_laminar":null,"darcy_friction_factor_if_turbulent":null,"fanning_friction_factor":0.008210681822232259,"friction_law":"serghides","friction_velocity":0.051147197138526036,"relative_roughness":0.006095083299471759,"roughness_regime":"transitional","roughness_reynolds":57.224687622044996,"wall_shear_stress":2.4878500221460107},"id":"STM-820","notes":[],"regime":{"entry_length":1.3087098134882504,"flow_regime":"turbulent","lower_critical_reynolds":2300,"possible_regimes":["turbulent"],"regime_basis":"common practice, round pipe","reynolds":146530.88469055932,"upper_critical_reynolds":4000},"section":{"centroid_depth":null,"equal_area_diameter":0.04922,"equal_friction_diameter":null,"fill_ratio":1,"flow_area":0.0019027121879912306,"free_surface_width":null,"hydraulic_diameter":0.04922,"hydraulic_radius":0.012305,"laminar_constant":64,"laminar_equivalent_diameter":0.04922,"mean_depth":null,"wetted_perimeter":0.15462919040968962},"units":{"centroid_depth":"m","darcy_friction_factor":"1","darcy_friction_factor_if_laminar":"1","darcy_friction_factor_if_turbulent":"1","density":"kg/m3","dynamic_viscosity":"Pa.s","entry_length":"m","equal_area_diameter":"m","equal_friction_diameter":"m","fanning_friction_factor":"1","fill_ratio":"1","flow_area":"m2","free_surface_width":"m","friction_velocity":"m/s","hydraulic_diameter":"m","hydraulic_radius":"m","kinematic_viscosity":"m2/s","laminar_constant":"1","laminar_equivalent_diameter":"m","lower_critical_reynolds":"1","mass_flow":"kg/s","mean_depth":"m","relative_roughness":"1","reynolds":"1","roughness_reynolds":"1","sound_speed":"m/s","upper_critical_reynolds":"1","vapour_pressure":"Pa","velocity":"m/s","volume_flow":"m3/s","wall_shear_stress":"Pa","wetted_perimeter":"m"}}
+// Example: {"engine":{"method_revision":1,"platform":"linux/amd64","version":"0.1.0"},"fingerprint":"e0a23fceb56213c804ae2c3483085d5f51519dda8bbfd706d85188e2b70dfd71","flow":{"mass_flow":1.4444444444444444,"reference_pressure":null,"reference_temperature":null,"reference_volume_flow":null,"velocity":0.7982652533271429,"volume_flow":0.0015188690267554622},"fluid":{"density":951,"dynamic_viscosity":0.000255,"heat_capacity_ratio":null,"kinematic_viscosity":2.681388012618297e-7,"phase":"liquid","pressure":null,"property_source":"given","sound_speed":null,"temperature":null,"vapour_pressure":null},"friction":{"darcy_friction_factor":0.032842727288929036,"darcy_friction_factor_if_laminar":null,"darcy_friction_factor_if_turbulent":null,"fanning_friction_factor":0.008210681822232259,"friction_law":"serghides","friction_velocity":0.051147197138526036,"relative_roughness":0.006095083299471759,"roughness_regime":"transitional","roughness_reynolds":57.224687622044996,"wall_shear_stress":2.4878500221460107},"id":"STM-820","notes":[],"regime":{"entry_length":1.3087098134882504,"flow_regime":"turbulent","lower_critical_reynolds":2300,"possible_regimes":["turbulent"],"regime_basis":"common practice, round pipe","reynolds":146530.88469055932,"upper_critical_reynolds":4000},"section":{"centroid_depth":null,"equal_area_diameter":0.04922,"equal_friction_diameter":null,"fill_ratio":1,"flow_area":0.0019027121879912306,"free_surface_width":null,"hydraulic_diameter":0.04922,"hydraulic_radius":0.012305,"laminar_constant":64,"laminar_equivalent_diameter":0.04922,"mean_depth":null,"wetted_perimeter":0.15462919040968962},"units":{"centroid_depth":"m","darcy_friction_factor":"1","darcy_friction_factor_if_laminar":"1","darcy_friction_factor_if_turbulent":"1","density":"kg/m3","dynamic_viscosity":"Pa.s","entry_length":"m","equal_area_diameter":"m","equal_friction_diameter":"m","fanning_friction_factor":"1","fill_ratio":"1","flow_area":"m2","free_surface_width":"m","friction_velocity":"m/s","heat_capacity_ratio":"1","hydraulic_diameter":"m","hydraulic_radius":"m","kinematic_viscosity":"m2/s","laminar_constant":"1","laminar_equivalent_diameter":"m","lower_critical_reynolds":"1","mass_flow":"kg/s","mean_depth":"m","pressure":"Pa","reference_pressure":"Pa","reference_temperature":"K","reference_volume_flow":"m3/s","relative_roughness":"1","reynolds":"1","roughness_reynolds":"1","sound_speed":"m/s","temperature":"K","upper_critical_reynolds":"1","vapour_pressure":"Pa","velocity":"m/s","volume_flow":"m3/s","wall_shear_stress":"Pa","wetted_perimeter":"m"}}
 type FrictionAnswer struct {
 	// Engine What calculated. Equal method revisions give equal numbers on one platform.
 	//
@@ -460,12 +601,12 @@ type FrictionAnswer struct {
 
 	// Flow Block flow of an answer. Every key is there; what has no meaning in the case is null.
 	//
-	// Example: {"mass_flow":33.33,"velocity":1.7877069327749544,"volume_flow":0.03333333333333333}
+	// Example: {"mass_flow":33.33,"reference_pressure":null,"reference_temperature":null,"reference_volume_flow":null,"velocity":1.7877069327749544,"volume_flow":0.03333333333333333}
 	Flow AnsweredFlow `json:"flow"`
 
 	// Fluid Block fluid of an answer. Every key is there; what has no meaning in the case is null.
 	//
-	// Example: {"density":999.9,"dynamic_viscosity":0.00147,"kinematic_viscosity":0.0000014701470147014701,"phase":"liquid","property_source":"given","sound_speed":null,"vapour_pressure":935}
+	// Example: {"density":999.9,"dynamic_viscosity":0.00147,"heat_capacity_ratio":null,"kinematic_viscosity":0.0000014701470147014701,"phase":"liquid","pressure":null,"property_source":"given","sound_speed":null,"temperature":null,"vapour_pressure":935}
 	Fluid AnsweredFluid `json:"fluid"`
 
 	// Friction Block friction of an answer. Every key is there; what has no meaning in the case is null.
@@ -661,7 +802,7 @@ type ProblemType = string
 
 // RegimeAnswer Answer of the regime door.
 //
-// Example: {"engine":{"method_revision":1,"platform":"linux/amd64","version":"0.1.0"},"fingerprint":"d5c21ddeb97f875fe36a92345c6ffd2ea301289fd7afe72a5d5a4653cbf098da","flow":{"mass_flow":4.759512870188537,"velocity":1.5,"volume_flow":0.004712388980384691},"fluid":{"density":1010,"dynamic_viscosity":0.0006,"kinematic_viscosity":5.94059405940594e-7,"phase":"liquid","property_source":"given","sound_speed":null,"vapour_pressure":null},"id":"CIP-811","notes":[],"regime":{"entry_length":1.6331053024674593,"flow_regime":"turbulent","lower_critical_reynolds":2300,"possible_regimes":["turbulent"],"regime_basis":"common practice, round pipe; assumed for this section","reynolds":153336.26898868804,"upper_critical_reynolds":4000},"section":{"centroid_depth":null,"equal_area_diameter":0.06324555320336758,"equal_friction_diameter":null,"fill_ratio":1,"flow_area":0.0031415926535897937,"free_surface_width":null,"hydraulic_diameter":0.06072723524304476,"hydraulic_radius":0.01518180881076119,"laminar_constant":65.64278838470095,"laminar_equivalent_diameter":0.059207464387065596,"mean_depth":null,"wetted_perimeter":0.20693138036114417},"units":{"centroid_depth":"m","density":"kg/m3","dynamic_viscosity":"Pa.s","entry_length":"m","equal_area_diameter":"m","equal_friction_diameter":"m","fill_ratio":"1","flow_area":"m2","free_surface_width":"m","hydraulic_diameter":"m","hydraulic_radius":"m","kinematic_viscosity":"m2/s","laminar_constant":"1","laminar_equivalent_diameter":"m","lower_critical_reynolds":"1","mass_flow":"kg/s","mean_depth":"m","reynolds":"1","sound_speed":"m/s","upper_critical_reynolds":"1","vapour_pressure":"Pa","velocity":"m/s","volume_flow":"m3/s","wetted_perimeter":"m"}}
+// Example: {"engine":{"method_revision":1,"platform":"linux/amd64","version":"0.1.0"},"fingerprint":"86ab6bd8ae5cdc552a2b6a7c91ef0e1c241b3a8019fdc46156a5248486a12255","flow":{"mass_flow":4.759512870188537,"reference_pressure":null,"reference_temperature":null,"reference_volume_flow":null,"velocity":1.5,"volume_flow":0.004712388980384691},"fluid":{"density":1010,"dynamic_viscosity":0.0006,"heat_capacity_ratio":null,"kinematic_viscosity":5.94059405940594e-7,"phase":"liquid","pressure":null,"property_source":"given","sound_speed":null,"temperature":null,"vapour_pressure":null},"id":"CIP-811","notes":[],"regime":{"entry_length":1.6331053024674593,"flow_regime":"turbulent","lower_critical_reynolds":2300,"possible_regimes":["turbulent"],"regime_basis":"common practice, round pipe; assumed for this section","reynolds":153336.26898868804,"upper_critical_reynolds":4000},"section":{"centroid_depth":null,"equal_area_diameter":0.06324555320336758,"equal_friction_diameter":null,"fill_ratio":1,"flow_area":0.0031415926535897937,"free_surface_width":null,"hydraulic_diameter":0.06072723524304476,"hydraulic_radius":0.01518180881076119,"laminar_constant":65.64278838470095,"laminar_equivalent_diameter":0.059207464387065596,"mean_depth":null,"wetted_perimeter":0.20693138036114417},"units":{"centroid_depth":"m","density":"kg/m3","dynamic_viscosity":"Pa.s","entry_length":"m","equal_area_diameter":"m","equal_friction_diameter":"m","fill_ratio":"1","flow_area":"m2","free_surface_width":"m","heat_capacity_ratio":"1","hydraulic_diameter":"m","hydraulic_radius":"m","kinematic_viscosity":"m2/s","laminar_constant":"1","laminar_equivalent_diameter":"m","lower_critical_reynolds":"1","mass_flow":"kg/s","mean_depth":"m","pressure":"Pa","reference_pressure":"Pa","reference_temperature":"K","reference_volume_flow":"m3/s","reynolds":"1","sound_speed":"m/s","temperature":"K","upper_critical_reynolds":"1","vapour_pressure":"Pa","velocity":"m/s","volume_flow":"m3/s","wetted_perimeter":"m"}}
 type RegimeAnswer struct {
 	// Engine What calculated. Equal method revisions give equal numbers on one platform.
 	//
@@ -675,12 +816,12 @@ type RegimeAnswer struct {
 
 	// Flow Block flow of an answer. Every key is there; what has no meaning in the case is null.
 	//
-	// Example: {"mass_flow":33.33,"velocity":1.7877069327749544,"volume_flow":0.03333333333333333}
+	// Example: {"mass_flow":33.33,"reference_pressure":null,"reference_temperature":null,"reference_volume_flow":null,"velocity":1.7877069327749544,"volume_flow":0.03333333333333333}
 	Flow AnsweredFlow `json:"flow"`
 
 	// Fluid Block fluid of an answer. Every key is there; what has no meaning in the case is null.
 	//
-	// Example: {"density":999.9,"dynamic_viscosity":0.00147,"kinematic_viscosity":0.0000014701470147014701,"phase":"liquid","property_source":"given","sound_speed":null,"vapour_pressure":935}
+	// Example: {"density":999.9,"dynamic_viscosity":0.00147,"heat_capacity_ratio":null,"kinematic_viscosity":0.0000014701470147014701,"phase":"liquid","pressure":null,"property_source":"given","sound_speed":null,"temperature":null,"vapour_pressure":935}
 	Fluid AnsweredFluid `json:"fluid"`
 
 	// Id Free text; it has no part in the calculation or the fingerprint.
@@ -766,8 +907,13 @@ type SectionAnswer struct {
 
 // SegmentAnswer Answer of the segment door.
 //
-// Example: {"engine":{"method_revision":1,"platform":"linux/amd64","version":"0.1.0"},"fingerprint":"4bc984fdda2cfc35b7d2711c21bfd7b3d59562cc4656c82b4b885935ab89c5d2","flow":{"mass_flow":33.33,"velocity":1.7877069327749544,"volume_flow":0.03333333333333333},"fluid":{"density":999.9,"dynamic_viscosity":0.00147,"kinematic_viscosity":0.0000014701470147014701,"phase":"liquid","property_source":"given","sound_speed":null,"vapour_pressure":935},"friction":{"darcy_friction_factor":0.017812032946072424,"darcy_friction_factor_if_laminar":null,"darcy_friction_factor_if_turbulent":null,"fanning_friction_factor":0.004453008236518106,"friction_law":"colebrook_white","friction_velocity":0.08435446507484402,"relative_roughness":0.00029205607476635517,"roughness_regime":"smooth","roughness_reynolds":2.5820213151531597,"wall_shear_stress":7.114964210485272},"id":"CHW-101","notes":[{"code":"defaults_used","level":"info","text":"Taken as default: friction_law colebrook_white; gravity 9.80665 m/s2; atmospheric_pressure 101325 Pa; exponent 2 of rated components."}],"pressure":{"acceleration_drop":0,"bed_slope":null,"elevation_drop":31378.141871999997,"fittings_drop":13820.815071276398,"fluid_power":2023.8151740531064,"friction_drop":15515.498278316794,"friction_drop_if_laminar":null,"friction_drop_if_turbulent":null,"friction_gradient":184.7083128371047,"friction_slope":null,"head_loss":2.9917706122193235,"inlet_pressure":521325,"lowest_pressure":460610.5447784068,"outlet_pressure":460610.5447784068,"static_pressure_drop":60714.45522159319,"static_pressure_drop_if_laminar":null,"static_pressure_drop_if_turbulent":null,"total_pressure_loss":29336.31334959319},"regime":{"entry_length":4.356484602962391,"flow_regime":"turbulent","lower_critical_reynolds":2300,"possible_regimes":["turbulent"],"regime_basis":"common practice, round pipe","reynolds":187362.13551941823,"upper_critical_reynolds":4000},"section":{"centroid_depth":null,"equal_area_diameter":0.15408,"equal_friction_diameter":null,"fill_ratio":1,"flow_area":0.01864586008042824,"free_surface_width":null,"hydraulic_diameter":0.15408,"hydraulic_radius":0.03852,"laminar_constant":64,"laminar_equivalent_diameter":0.15408,"mean_depth":null,"wetted_perimeter":0.4840565960651153},"title":"Invented: chilled water, energy centre to bottling hall","units":{"acceleration_drop":"Pa","bed_slope":"1","centroid_depth":"m","darcy_friction_factor":"1","darcy_friction_factor_if_laminar":"1","darcy_friction_factor_if_turbulent":"1","density":"kg/m3","dynamic_viscosity":"Pa.s","elevation_drop":"Pa","entry_length":"m","equal_area_diameter":"m","equal_friction_diameter":"m","fanning_friction_factor":"1","fill_ratio":"1","fittings_drop":"Pa","flow_area":"m2","fluid_power":"W","free_surface_width":"m","friction_drop":"Pa","friction_drop_if_laminar":"Pa","friction_drop_if_turbulent":"Pa","friction_gradient":"Pa/m","friction_slope":"1","friction_velocity":"m/s","head_loss":"m","hydraulic_diameter":"m","hydraulic_radius":"m","inlet_pressure":"Pa","kinematic_viscosity":"m2/s","laminar_constant":"1","laminar_equivalent_diameter":"m","lower_critical_reynolds":"1","lowest_pressure":"Pa","mass_flow":"kg/s","mean_depth":"m","outlet_pressure":"Pa","relative_roughness":"1","reynolds":"1","roughness_reynolds":"1","sound_speed":"m/s","static_pressure_drop":"Pa","static_pressure_drop_if_laminar":"Pa","static_pressure_drop_if_turbulent":"Pa","total_pressure_loss":"Pa","upper_critical_reynolds":"1","vapour_pressure":"Pa","velocity":"m/s","volume_flow":"m3/s","wall_shear_stress":"Pa","wetted_perimeter":"m"}}
+// Example: {"engine":{"method_revision":1,"platform":"linux/amd64","version":"0.1.0"},"fingerprint":"23d2ca0d107b942ac0442d82557c36fbe54a5dc52ab8aec115d5b8b029360828","flow":{"mass_flow":33.33,"reference_pressure":null,"reference_temperature":null,"reference_volume_flow":null,"velocity":1.7877069327749544,"volume_flow":0.03333333333333333},"fluid":{"density":999.9,"dynamic_viscosity":0.00147,"heat_capacity_ratio":null,"kinematic_viscosity":0.0000014701470147014701,"phase":"liquid","pressure":null,"property_source":"given","sound_speed":null,"temperature":null,"vapour_pressure":935},"friction":{"darcy_friction_factor":0.017812032946072424,"darcy_friction_factor_if_laminar":null,"darcy_friction_factor_if_turbulent":null,"fanning_friction_factor":0.004453008236518106,"friction_law":"colebrook_white","friction_velocity":0.08435446507484402,"relative_roughness":0.00029205607476635517,"roughness_regime":"smooth","roughness_reynolds":2.5820213151531597,"wall_shear_stress":7.114964210485272},"id":"CHW-101","notes":[{"code":"defaults_used","level":"info","text":"Taken as default: friction_law colebrook_white; gravity 9.80665 m/s2; exponent 2 of rated components; atmospheric_pressure 101325 Pa."}],"pressure":{"acceleration_drop":0,"bed_slope":null,"choking_mass_flow":null,"elevation_drop":31378.141871999997,"fittings_drop":13820.815071276398,"fluid_power":2023.8151740531064,"friction_drop":15515.498278316794,"friction_drop_if_laminar":null,"friction_drop_if_turbulent":null,"friction_gradient":184.7083128371047,"friction_slope":null,"gas_model":null,"gauge_pressure_drop":null,"head_loss":2.9917706122193235,"inlet_pressure":521325,"inlet_temperature":null,"inlet_velocity":1.7877069327749544,"lowest_pressure":460610.5447784068,"mach_number_in":null,"mach_number_out":null,"outlet_pressure":460610.5447784068,"outlet_temperature":null,"outlet_velocity":1.7877069327749544,"static_pressure_drop":60714.45522159319,"static_pressure_drop_if_laminar":null,"static_pressure_drop_if_turbulent":null,"total_pressure_loss":29336.31334959319},"regime":{"entry_length":4.356484602962391,"flow_regime":"turbulent","lower_critical_reynolds":2300,"possible_regimes":["turbulent"],"regime_basis":"common practice, round pipe","reynolds":187362.13551941823,"upper_critical_reynolds":4000},"section":{"centroid_depth":null,"equal_area_diameter":0.15408,"equal_friction_diameter":null,"fill_ratio":1,"flow_area":0.01864586008042824,"free_surface_width":null,"hydraulic_diameter":0.15408,"hydraulic_radius":0.03852,"laminar_constant":64,"laminar_equivalent_diameter":0.15408,"mean_depth":null,"wetted_perimeter":0.4840565960651153},"title":"Invented: chilled water, energy centre to bottling hall","units":{"acceleration_drop":"Pa","bed_slope":"1","centroid_depth":"m","choking_mass_flow":"kg/s","darcy_friction_factor":"1","darcy_friction_factor_if_laminar":"1","darcy_friction_factor_if_turbulent":"1","density":"kg/m3","dynamic_viscosity":"Pa.s","elevation_drop":"Pa","entry_length":"m","equal_area_diameter":"m","equal_friction_diameter":"m","fanning_friction_factor":"1","fill_ratio":"1","fittings_drop":"Pa","flow_area":"m2","fluid_power":"W","free_surface_width":"m","friction_drop":"Pa","friction_drop_if_laminar":"Pa","friction_drop_if_turbulent":"Pa","friction_gradient":"Pa/m","friction_slope":"1","friction_velocity":"m/s","gauge_pressure_drop":"Pa","head_loss":"m","heat_capacity_ratio":"1","hydraulic_diameter":"m","hydraulic_radius":"m","inlet_pressure":"Pa","inlet_temperature":"K","inlet_velocity":"m/s","kinematic_viscosity":"m2/s","laminar_constant":"1","laminar_equivalent_diameter":"m","lower_critical_reynolds":"1","lowest_pressure":"Pa","mach_number_in":"1","mach_number_out":"1","mass_flow":"kg/s","mean_depth":"m","outlet_pressure":"Pa","outlet_temperature":"K","outlet_velocity":"m/s","pressure":"Pa","reference_pressure":"Pa","reference_temperature":"K","reference_volume_flow":"m3/s","relative_roughness":"1","reynolds":"1","roughness_reynolds":"1","sound_speed":"m/s","static_pressure_drop":"Pa","static_pressure_drop_if_laminar":"Pa","static_pressure_drop_if_turbulent":"Pa","temperature":"K","total_pressure_loss":"Pa","upper_critical_reynolds":"1","vapour_pressure":"Pa","velocity":"m/s","volume_flow":"m3/s","wall_shear_stress":"Pa","wetted_perimeter":"m"}}
 type SegmentAnswer struct {
+	// Distribution A gas at equal steps along the line, where distribution_points asks for it.
+	//
+	// Example: [{"distance":0,"mach_number":0.056,"pressure":800000,"temperature":298.15,"velocity":19.7}]
+	Distribution *Distribution `json:"distribution,omitempty"`
+
 	// Engine What calculated. Equal method revisions give equal numbers on one platform.
 	//
 	// Example: {"method_revision":1,"platform":"linux/amd64","version":"0.1.0"}
@@ -780,12 +926,12 @@ type SegmentAnswer struct {
 
 	// Flow Block flow of an answer. Every key is there; what has no meaning in the case is null.
 	//
-	// Example: {"mass_flow":33.33,"velocity":1.7877069327749544,"volume_flow":0.03333333333333333}
+	// Example: {"mass_flow":33.33,"reference_pressure":null,"reference_temperature":null,"reference_volume_flow":null,"velocity":1.7877069327749544,"volume_flow":0.03333333333333333}
 	Flow AnsweredFlow `json:"flow"`
 
 	// Fluid Block fluid of an answer. Every key is there; what has no meaning in the case is null.
 	//
-	// Example: {"density":999.9,"dynamic_viscosity":0.00147,"kinematic_viscosity":0.0000014701470147014701,"phase":"liquid","property_source":"given","sound_speed":null,"vapour_pressure":935}
+	// Example: {"density":999.9,"dynamic_viscosity":0.00147,"heat_capacity_ratio":null,"kinematic_viscosity":0.0000014701470147014701,"phase":"liquid","pressure":null,"property_source":"given","sound_speed":null,"temperature":null,"vapour_pressure":935}
 	Fluid AnsweredFluid `json:"fluid"`
 
 	// Friction Block friction of an answer. Every key is there; what has no meaning in the case is null.
@@ -805,7 +951,7 @@ type SegmentAnswer struct {
 
 	// Pressure Block pressure of an answer. Every key is there; what has no meaning in the case is null.
 	//
-	// Example: {"acceleration_drop":0,"bed_slope":null,"elevation_drop":31378.141871999997,"fittings_drop":13820.815071276398,"fluid_power":2023.8151740531064,"friction_drop":15515.498278316794,"friction_drop_if_laminar":null,"friction_drop_if_turbulent":null,"friction_gradient":184.7083128371047,"friction_slope":null,"head_loss":2.9917706122193235,"inlet_pressure":521325,"lowest_pressure":460610.5447784068,"outlet_pressure":460610.5447784068,"static_pressure_drop":60714.45522159319,"static_pressure_drop_if_laminar":null,"static_pressure_drop_if_turbulent":null,"total_pressure_loss":29336.31334959319}
+	// Example: {"acceleration_drop":0,"bed_slope":null,"choking_mass_flow":null,"elevation_drop":31378.141871999997,"fittings_drop":13820.815071276398,"fluid_power":2023.8151740531064,"friction_drop":15515.498278316794,"friction_drop_if_laminar":null,"friction_drop_if_turbulent":null,"friction_gradient":184.7083128371047,"friction_slope":null,"gas_model":null,"gauge_pressure_drop":null,"head_loss":2.9917706122193235,"inlet_pressure":521325,"inlet_temperature":null,"inlet_velocity":1.7877069327749544,"lowest_pressure":460610.5447784068,"mach_number_in":null,"mach_number_out":null,"outlet_pressure":460610.5447784068,"outlet_temperature":null,"outlet_velocity":1.7877069327749544,"static_pressure_drop":60714.45522159319,"static_pressure_drop_if_laminar":null,"static_pressure_drop_if_turbulent":null,"total_pressure_loss":29336.31334959319}
 	Pressure AnsweredPressure `json:"pressure"`
 
 	// Regime Block regime of an answer. Every key is there; what has no meaning in the case is null.

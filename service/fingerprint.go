@@ -20,9 +20,14 @@ func (w *work) fingerprint(out *answer.Answer) {
 	c.text("borewright")
 	c.number(MethodRevision)
 	c.text(w.req.Door.String())
-	c.section(&w.req.Section, w.in.Section.Shape)
-	if w.req.Door != document.SectionDoor {
-		w.fluidAndFlow(&c)
+	if w.req.Door == document.FluidDoor {
+		w.fluidInputs(&c)
+	} else {
+		c.section(&w.req.Section, w.in.Section.Shape)
+	}
+	if w.req.Door != document.SectionDoor && w.req.Door != document.FluidDoor {
+		w.fluidInputs(&c)
+		w.flowInputs(&c)
 	}
 	if w.req.Door == document.FrictionDoor || w.req.Door == document.SegmentDoor {
 		c.number(w.in.Roughness)
@@ -30,7 +35,7 @@ func (w *work) fingerprint(out *answer.Answer) {
 		c.number(float64(w.in.DiameterRule))
 	}
 	if w.req.Door == document.SegmentDoor {
-		w.segmentInputs(&c)
+		w.segmentInputs(&c, out)
 	}
 	w.canonical = c
 	out.Fingerprint = sha256.Sum256(c)
@@ -102,13 +107,27 @@ func dimension(s *document.Section, i int) calc.Optional {
 	return given(n)
 }
 
-func (w *work) fluidAndFlow(c *canonical) {
-	f := &w.in.Fluid
+// fluidInputs are the state and what names the fluid there; what an equation of
+// state makes of them is its own business.
+func (w *work) fluidInputs(c *canonical) {
+	f, r := &w.in.Fluid, &w.req.Fluid
+	c.number(float64(r.Way))
+	c.number(float64(r.Substance))
+	c.number(float64(r.Saturated))
+	c.optional(f.Temperature)
+	c.optional(f.Pressure)
+	if r.Way == document.BySubstance {
+		return
+	}
 	c.number(f.Density)
 	c.number(f.DynamicViscosity)
 	c.number(f.KinematicViscosity)
 	c.number(float64(f.Phase))
 	c.optional(f.VapourPressure)
+	c.optional(f.HeatCapacityRatio)
+}
+
+func (w *work) flowInputs(c *canonical) {
 	c.number(float64(w.in.Flow.By))
 	c.number(w.in.Flow.Value)
 	c.optional(w.in.Criteria.Lower)
@@ -117,12 +136,16 @@ func (w *work) fluidAndFlow(c *canonical) {
 	c.number(w.in.Criteria.CalmTo)
 }
 
-func (w *work) segmentInputs(c *canonical) {
+func (w *work) segmentInputs(c *canonical, out *answer.Answer) {
 	c.number(w.in.Length)
 	c.optional(w.in.Rise)
 	c.number(w.in.Gravity)
 	c.optional(w.in.InletPressure)
 	c.optional(w.in.OutletPressure)
+	c.number(float64(out.Result.Pressure.GasModel))
+	c.number(float64(len(out.Distribution)))
+	c.optional(out.Result.Pressure.AskedMassFlow)
+	c.optional(w.in.SurroundingsDensity)
 	c.number(float64(w.req.Inlet.Kind))
 	c.section(&w.req.Inlet.Section, w.in.Inlet.Section.Shape)
 	c.number(float64(w.req.Outlet.Kind))

@@ -98,10 +98,70 @@ func goldenRequests() []goldenRequest {
 	for i := range goldenPools {
 		add(document.SegmentDoor, object{"section": goldenPools[i], "fluid": goldenFluid(0), "flow": object{"velocity": 0.4 + 0.3*float64(i)}, "roughness": "1.5 mm", "length": "52 m", "rise": -0.05 * float64(i)})
 	}
-	for i := 0; len(list) < 200; i++ {
+	for i := 0; len(list) < 160; i++ {
 		add(document.SegmentDoor, goldenLine(i, goldenReynolds[(5*i)%len(goldenReynolds)]))
 	}
+	for _, f := range goldenStates {
+		add(document.FluidDoor, object{"fluid": f, "site": object{"altitude": "340 m"}})
+	}
+	for i := 0; len(list) < 200; i++ {
+		add(document.SegmentDoor, goldenStream(i))
+	}
 	return list
+}
+
+// goldenStates are fluids whose state is known, the liquid ones first.
+var goldenStates = []object{
+	{"substance": "water", "temperature": "6 degC", "pressure": "4.2 barg"},
+	{"substance": "water", "temperature": "82 degC", "pressure": "5 bara"},
+	{"substance": "water", "state": "saturated_liquid", "temperature": "105 degC"},
+	{"substance": "water", "state": "saturated_vapour", "pressure": "6 barg"},
+	{"substance": "water", "temperature": "240 degC", "pressure": "10 barg"},
+	{"substance": "air", "temperature": "20 degC", "pressure": "7 barg"},
+	{"substance": "air", "temperature": "-5 degC", "pressure": "1013 mbara"},
+	{"molar_mass": "28.0134 g/mol", "heat_capacity_ratio": 1.4, "dynamic_viscosity": "17.8 uPa.s", "temperature": "25 degC", "pressure": "7 barg"},
+	{"relative_density": 0.62, "compressibility_factor": 0.98, "dynamic_viscosity": "11 uPa.s", "temperature": "15 degC", "pressure": "4 barg"},
+	{"molar_mass": "44.0095 g/mol", "heat_capacity_ratio": 1.29, "compressibility_factor": 0.93, "dynamic_viscosity": "14.8 uPa.s", "temperature": "290 K", "pressure": "12 bara"},
+}
+
+// firstGas is where the gases of known states begin.
+const firstGas = 3
+
+var goldenGasModels = []object{{}, {"gas_model": "isothermal"}, {"gas_model": "adiabatic"}, {"gas_model": "incompressible"}}
+
+var goldenGasFlows = []object{
+	{"mass_flow": 0.4}, {"velocity": 12.5}, {"volume_flow": "90 m3/h"}, {"mass_flow": 0}, {"mass_flow": "3 kg/h"}, {"mass_flow": 2.1},
+}
+
+// goldenStream is a segment with a fluid of a known state in a 3 inch pipe.
+func goldenStream(i int) object {
+	f := goldenStates[i%len(goldenStates)]
+	line := object{
+		"section": goldenSections[11].section, "fluid": f, "roughness": "0.045 mm", "length": 8.5 + 2.75*float64(i%9),
+		"flow": goldenGasFlows[i%len(goldenGasFlows)], "fittings": goldenFittings[i%2],
+	}
+	if i%len(goldenStates) < firstGas {
+		return line
+	}
+	more := []object{goldenGasModels[i%len(goldenGasModels)], {}, {"rise": 18 - 9*float64(i%5)}, {"surroundings": object{"substance": "air", "temperature": "12 degC"}, "rise": 25}}
+	for _, m := range []object{more[0], more[1+i%3], goldenEnds[i%4]} {
+		for k, v := range m {
+			line[k] = v
+		}
+	}
+	switch {
+	case f["substance"] == "air" && i%4 == 1:
+		line["flow"] = object{"reference_volume_flow": "850 Nm3/h"}
+	case f["heat_capacity_ratio"] != nil && line["gas_model"] != "incompressible" && i%3 == 0:
+		line["flow"], line["answer_at_choking"] = object{"mass_flow": 900}, true
+	}
+	if i%7 == 3 && f["state"] == nil {
+		line["outlet_pressure"] = f["pressure"]
+	}
+	if line["gas_model"] == "adiabatic" && f["heat_capacity_ratio"] == nil && f["substance"] == nil {
+		delete(line, "gas_model")
+	}
+	return line
 }
 
 func goldenFluid(i int) object {

@@ -14,7 +14,7 @@ import (
 
 // regimeBasis says where the limits of the regimes come from.
 func (w *work) regimeBasis(r *segment.Result) string {
-	if w.req.Door == document.SectionDoor {
+	if w.req.Door == document.SectionDoor || w.req.Door == document.FluidDoor {
 		return ""
 	}
 	switch lower, upper := w.in.Criteria.Lower.Valid, w.in.Criteria.Upper.Valid; {
@@ -58,6 +58,10 @@ var conditionNotes = []noteKind{
 		func(r *segment.Result) bool { return r.Conditions.EndLossMissing }},
 	{"below_vapour_pressure", "The lowest pressure falls below the vapour pressure: the liquid flashes, two phases, this answer does not hold.", "", answer.Limit,
 		func(r *segment.Result) bool { return r.Conditions.BelowVapour }},
+	{"answered_at_choking", "More was asked for than passes: the gas reaches its limiting velocity at the outlet, and this is the answer at choking_mass_flow. Beyond the outlet it expands on its own.", "", answer.Caution,
+		func(r *segment.Result) bool { return r.Conditions.Choked }},
+	{"gas_rise_without_surroundings", "A gas rises or falls and nothing is said about the surroundings: gauges at both ends see the fall of the air outside too. Give surroundings for gauge_pressure_drop.", "common practice", answer.Caution,
+		func(r *segment.Result) bool { return r.Conditions.GasRiseWithoutSurroundings }},
 	{"pressure_not_positive", "The lowest absolute pressure is not above zero: this flow cannot be had from this pressure.", "", answer.Limit,
 		func(r *segment.Result) bool { return r.Conditions.NotPositive }},
 }
@@ -65,7 +69,7 @@ var conditionNotes = []noteKind{
 // notes words what calc reports, what looks odd and which defaults mattered.
 func (w *work) notes(out *answer.Answer) {
 	r := &out.Result
-	if w.req.Door != document.SectionDoor {
+	if w.req.Door != document.SectionDoor && w.req.Door != document.FluidDoor {
 		w.regimeNote(out)
 		for i := range conditionNotes {
 			if n := &conditionNotes[i]; n.when(r) {
@@ -119,7 +123,7 @@ func (w *work) gas(out *answer.Answer) {
 		return
 	}
 	n := answer.Note{Code: "gas_taken_incompressible", Level: answer.Info,
-		Text: "A gas given by its density is taken as incompressible; this holds while the drop stays below 10 % of the absolute pressure."}
+		Text: "The gas is taken as incompressible; this holds while the drop stays below 10 % of the absolute pressure."}
 	p := &r.Pressure
 	if p.InletPressure.Valid && p.StaticPressureDrop.Value > segment.GasDropNoted*p.InletPressure.Value {
 		n.Level = answer.Caution
@@ -152,10 +156,15 @@ func number(get func(*work) document.Number) func(*work, *segment.Result) (float
 // watched says where each field of the plausibility table is found. Dimensions
 // of sections and fittings are looked up by their own tables.
 var watched = map[string]watch{
-	"roughness":                {"#/roughness", number(func(w *work) document.Number { return w.req.Roughness })},
-	"density":                  {"#/fluid/density", number(func(w *work) document.Number { return w.req.Fluid.Density })},
-	"dynamic_viscosity":        {"#/fluid/dynamic_viscosity", number(func(w *work) document.Number { return w.req.Fluid.DynamicViscosity })},
-	"kinematic_viscosity":      {"#/fluid/kinematic_viscosity", number(func(w *work) document.Number { return w.req.Fluid.KinematicViscosity })},
+	"roughness":           {"#/roughness", number(func(w *work) document.Number { return w.req.Roughness })},
+	"density":             {"#/fluid/density", number(func(w *work) document.Number { return w.req.Fluid.Density })},
+	"dynamic_viscosity":   {"#/fluid/dynamic_viscosity", number(func(w *work) document.Number { return w.req.Fluid.DynamicViscosity })},
+	"kinematic_viscosity": {"#/fluid/kinematic_viscosity", number(func(w *work) document.Number { return w.req.Fluid.KinematicViscosity })},
+	"temperature":         {"#/fluid/temperature", number(func(w *work) document.Number { return w.req.Fluid.Temperature })},
+	"pressure": {"#/fluid/pressure", func(w *work, _ *segment.Result) (float64, bool) {
+		return w.in.Fluid.Pressure.Value, w.req.Fluid.Pressure.Given
+	}},
+	"molar_mass":               {"#/fluid/molar_mass", number(func(w *work) document.Number { return w.req.Fluid.MolarMass })},
 	"vapour_pressure":          {"#/fluid/vapour_pressure", number(func(w *work) document.Number { return w.req.Fluid.VapourPressure })},
 	"length":                   {"#/length", number(func(w *work) document.Number { return w.req.Length })},
 	"rise":                     {"#/rise", number(func(w *work) document.Number { return w.req.Rise })},
@@ -166,10 +175,10 @@ var watched = map[string]watch{
 	"upper_critical_reynolds":  {"#/regime/upper_critical_reynolds", number(func(w *work) document.Number { return w.req.UpperCritical })},
 	"calm_laminar_to_reynolds": {"#/regime/calm_laminar_to_reynolds", number(func(w *work) document.Number { return w.req.CalmTo })},
 	"inlet_pressure": {"#/inlet_pressure", func(w *work, _ *segment.Result) (float64, bool) {
-		return w.in.InletPressure.Value, w.in.InletPressure.Valid
+		return w.in.InletPressure.Value, w.req.InletPressure.Given
 	}},
 	"outlet_pressure": {"#/outlet_pressure", func(w *work, _ *segment.Result) (float64, bool) {
-		return w.in.OutletPressure.Value, w.in.OutletPressure.Valid
+		return w.in.OutletPressure.Value, w.req.OutletPressure.Given
 	}},
 	"velocity": {"#/flow", func(w *work, r *segment.Result) (float64, bool) {
 		return r.Flow.Velocity, w.req.Flow.Given && r.Flow.Velocity > 0
@@ -301,24 +310,38 @@ func (w *work) defaultsUsed(out *answer.Answer) {
 		}
 		list = append(list, text...)
 	}
-	r := &out.Result
-	if w.req.Fluid.Phase == 0 && w.in.Fluid.Phase == fluid.Gas {
+	w.fluidDefaults(add)
+	if w.req.Door != document.FluidDoor {
+		w.flowDefaults(&out.Result, add)
+	}
+	if w.req.Door == document.SegmentDoor {
+		w.segmentDefaults(add)
+	}
+	w.atmosphereDefault(add)
+	w.defaults = list
+	if len(list) > 0 {
+		out.Notes = append(out.Notes, answer.Note{Code: "defaults_used", Level: answer.Info, Text: "Taken as default: " + string(list) + "."})
+	}
+}
+
+func (w *work) fluidDefaults(add func(string)) {
+	switch f := &w.req.Fluid; {
+	case f.Way == document.ByProperties && f.Phase == 0 && w.in.Fluid.Phase == fluid.Gas:
 		add("phase gas, by density")
+	case f.Way == document.ByConstants && !f.CompressibilityFactor.Given:
+		add("compressibility_factor 1")
+	}
+}
+
+func (w *work) flowDefaults(r *segment.Result, add func(string)) {
+	if w.req.GasModel == segment.ModelByFluid && r.Pressure.GasModel == segment.Isothermal {
+		add("gas_model isothermal")
 	}
 	if r.Conditions.RegimeUncertain && !w.in.Criteria.Lower.Valid && !w.in.Criteria.Upper.Valid {
 		add("regime limits " + strconv.FormatFloat(r.Regime.Lower, 'g', -1, 64) + " and " + strconv.FormatFloat(r.Regime.Upper, 'g', -1, 64))
 	}
 	if w.req.Door != document.RegimeDoor && !w.req.LawGiven && r.Regime.CanBeTurbulent {
 		add("friction_law colebrook_white")
-	}
-	if w.req.Door == document.SegmentDoor {
-		w.segmentDefaults(add)
-	} else {
-		w.atmosphereDefault(add)
-	}
-	w.defaults = list
-	if len(list) > 0 {
-		out.Notes = append(out.Notes, answer.Note{Code: "defaults_used", Level: answer.Info, Text: "Taken as default: " + string(list) + "."})
 	}
 }
 
@@ -331,7 +354,6 @@ func (w *work) segmentDefaults(add func(string)) {
 	if len(w.req.Fittings) == 0 {
 		add("no fittings")
 	}
-	w.atmosphereDefault(add)
 	for i := range w.req.Fittings {
 		if f := &w.req.Fittings[i]; f.RatedDrop.Given && !f.Exponent.Given {
 			add("exponent 2 of rated components")

@@ -77,8 +77,9 @@ func clone(v any) any {
 // membersOf lists what a door takes of a segment's request.
 var membersOf = map[document.Door][]string{
 	document.SectionDoor:  {"section", "id", "title", "tags"},
-	document.RegimeDoor:   {"section", "fluid", "flow", "regime", "id", "title", "tags"},
-	document.FrictionDoor: {"section", "fluid", "flow", "regime", "roughness", "friction", "id", "title", "tags"},
+	document.FluidDoor:    {"fluid", "site", "id", "title", "tags"},
+	document.RegimeDoor:   {"section", "fluid", "flow", "regime", "site", "id", "title", "tags"},
+	document.FrictionDoor: {"section", "fluid", "flow", "regime", "roughness", "friction", "site", "id", "title", "tags"},
 }
 
 var doors = []document.Door{document.SectionDoor, document.RegimeDoor, document.FrictionDoor, document.SegmentDoor}

@@ -28,6 +28,7 @@ type work struct {
 	items      []fitting.Item
 	violations []document.Violation
 	atmosphere float64
+	reference  fluid.StatePoint // of a reference volume flow
 	gaugeUsed  bool
 	canonical  []byte
 	defaults   []byte
@@ -51,11 +52,17 @@ func (w *work) resolve() error {
 	r := &w.req
 	w.violations = w.violations[:0]
 	w.in = segment.Input{Gravity: segment.StandardGravity, Law: r.Law, DiameterRule: r.DiameterRule}
+	w.reference, w.atmosphere, w.gaugeUsed = fluid.StatePoint{}, standardAtmosphere, false
+	if r.Door == document.FluidDoor {
+		w.site()
+		w.fluid()
+		return w.refusal()
+	}
 	w.in.Section = w.section(&r.Section, "/section")
 	if r.Door != document.SectionDoor {
 		w.site()
 		w.fluid()
-		w.in.Flow = flow.Rate{By: r.Flow.By, Value: r.Flow.Measure.Value}
+		w.flow()
 		w.in.Criteria = flow.Criteria{Lower: given(r.LowerCritical), Upper: given(r.UpperCritical), Approach: r.Approach, CalmTo: r.CalmTo.Value}
 		w.in.Roughness = r.Roughness.Value
 	}
@@ -107,7 +114,6 @@ func pipeOf(s *document.Section) (section.Pipe, error) {
 // site finds the atmosphere that gauge pressures are against, and gravity.
 func (w *work) site() {
 	site := &w.req.Site
-	w.atmosphere, w.gaugeUsed = standardAtmosphere, false
 	switch {
 	case site.AtmosphericPressure.Given:
 		w.atmosphere = site.AtmosphericPressure.Value
@@ -138,23 +144,12 @@ func (w *work) absolute(n document.Number, in calc.Input, pointer string) calc.O
 	return calc.Some(p)
 }
 
-func (w *work) fluid() {
-	f := &w.req.Fluid
-	p, err := fluid.Given(fluid.GivenInput{
-		Density: f.Density.Value, DynamicViscosity: given(f.DynamicViscosity), KinematicViscosity: given(f.KinematicViscosity),
-		VapourPressure: w.absolute(f.VapourPressure, calc.VapourPressure, "/fluid/vapour_pressure"), Phase: f.Phase,
-	})
-	if err != nil {
-		w.fault(err, "/fluid")
-	}
-	w.in.Fluid = p
-}
-
 func (w *work) segment() {
 	r := &w.req
 	w.in.Length, w.in.Rise = r.Length.Value, given(r.Rise)
-	w.in.InletPressure = w.absolute(r.InletPressure, calc.InletPressure, "/inlet_pressure")
-	w.in.OutletPressure = w.absolute(r.OutletPressure, calc.OutletPressure, "/outlet_pressure")
+	w.ends()
+	w.surroundings()
+	w.in.GasModel, w.in.AnswerAtChoking = r.GasModel, r.AtChoking
 	w.in.Inlet, w.in.Outlet = w.end(&r.Inlet, "/inlet"), w.end(&r.Outlet, "/outlet")
 	w.items = w.items[:0]
 	for i := range r.Fittings {
@@ -222,12 +217,17 @@ func codeOf(kind error) string {
 		return "outside_validity"
 	case calc.ErrUnknown:
 		return "not_known_yet"
+	case calc.ErrChoked:
+		return "choked"
 	}
 	return "outside_domain"
 }
 
 // blocksOf says in which block of a request a leaf stands.
 var blocksOf = map[string]string{
+	"temperature": "/fluid", "pressure": "/fluid", "substance": "/fluid", "state": "/fluid", "molar_mass": "/fluid", "relative_density": "/fluid",
+	"heat_capacity_ratio": "/fluid", "compressibility_factor": "/fluid", "reference_volume_flow": "/flow", "reference_temperature": "/flow",
+	"reference_pressure": "/flow", "gas_model": "", "answer_at_choking": "", "distribution_points": "",
 	"density": "/fluid", "dynamic_viscosity": "/fluid", "kinematic_viscosity": "/fluid", "vapour_pressure": "/fluid", "phase": "/fluid",
 	"volume_flow": "/flow", "mass_flow": "/flow", "velocity": "/flow",
 	"friction_law": "/friction", "friction_diameter": "/friction",
@@ -258,6 +258,9 @@ func (w *work) place(err error, e *calc.Error, pointer string) string {
 	}
 	if at, ok := resultsAt[e.Quantity]; ok {
 		return at
+	}
+	if pointer == "/surroundings" {
+		return pointer + "/" + e.Quantity
 	}
 	if block, ok := blocksOf[e.Quantity]; ok && (pointer == "" || block != "" || !strings.HasPrefix(pointer, "/section")) {
 		return block + "/" + e.Quantity

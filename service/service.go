@@ -10,6 +10,7 @@ import (
 	"sync"
 
 	"borewright/calc"
+	"borewright/calc/fluid"
 	"borewright/calc/segment"
 	"borewright/calc/units"
 	"borewright/service/answer"
@@ -95,13 +96,19 @@ func (s *Service) Calculate(req *document.Request, out *answer.Answer) error {
 }
 
 func (s *Service) calculate(w *work, out *answer.Answer) error {
-	notes := out.Notes[:0]
-	*out = answer.Answer{Last: lastBlock[w.req.Door], ID: w.req.ID, Title: w.req.Title, Engine: s.engine, Notes: notes}
+	notes, distribution := out.Notes[:0], out.Distribution[:0]
+	*out = answer.Answer{First: firstBlock(w.req.Door), Last: lastBlock[w.req.Door], ID: w.req.ID, Title: w.req.Title, Engine: s.engine, Notes: notes, Distribution: distribution}
 	if err := w.resolve(); err != nil {
 		return err
 	}
 	if err := w.run(&out.Result); err != nil {
 		return w.blame(err)
+	}
+	if err := w.distribute(out); err != nil {
+		return w.blame(err)
+	}
+	if w.reference != (fluid.StatePoint{}) {
+		out.Reference = answer.Reference{VolumeFlow: calc.Some(w.req.Flow.Measure.Value), Temperature: calc.Some(w.reference.Temperature), Pressure: calc.Some(w.reference.Pressure)}
 	}
 	out.Regime = w.regimeBasis(&out.Result)
 	w.notes(out)
@@ -111,7 +118,15 @@ func (s *Service) calculate(w *work, out *answer.Answer) error {
 
 var lastBlock = [...]answer.Block{
 	document.SectionDoor: answer.SectionBlock, document.RegimeDoor: answer.RegimeBlock,
-	document.FrictionDoor: answer.FrictionBlock, document.SegmentDoor: answer.PressureBlock,
+	document.FrictionDoor: answer.FrictionBlock, document.SegmentDoor: answer.PressureBlock, document.FluidDoor: answer.FluidBlock,
+}
+
+// firstBlock is the section, but where none is asked about.
+func firstBlock(d document.Door) answer.Block {
+	if d == document.FluidDoor {
+		return answer.FluidBlock
+	}
+	return answer.SectionBlock
 }
 
 // run asks calc as far as the door goes.
@@ -125,8 +140,22 @@ func (w *work) run(out *segment.Result) error {
 		return segment.PressureDrop(&w.in, out)
 	}
 	*out = segment.Result{}
+	if w.req.Door == document.FluidDoor {
+		out.Fluid = w.in.Fluid
+		return nil
+	}
 	var err error
 	out.Section, err = w.in.Section.Of()
+	return err
+}
+
+// distribute gives a gas along the line, where that is asked for.
+func (w *work) distribute(out *answer.Answer) error {
+	if !w.req.Distribution.Given {
+		return nil
+	}
+	var err error
+	out.Distribution, err = segment.Distribution(out.Distribution, &w.in, &out.Result, int(w.req.Distribution.Value))
 	return err
 }
 

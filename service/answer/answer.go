@@ -4,6 +4,7 @@
 package answer
 
 import (
+	"borewright/calc"
 	"borewright/calc/segment"
 	"borewright/calc/units"
 )
@@ -58,13 +59,20 @@ type Engine struct {
 
 // Answer is one calculation, with everything that is told about it.
 type Answer struct {
-	Last        Block // the last block of the door that was asked
-	ID, Title   string
-	Result      segment.Result
-	Regime      string // where the limits of the regimes come from
-	Notes       []Note
-	Engine      Engine
-	Fingerprint [32]byte
+	First, Last  Block // of the blocks that the door answers
+	ID, Title    string
+	Result       segment.Result
+	Reference    Reference
+	Regime       string             // where the limits of the regimes come from
+	Distribution []segment.GasPoint // of a gas along the line, where that was asked for
+	Notes        []Note
+	Engine       Engine
+	Fingerprint  [32]byte
+}
+
+// Reference is a volume flow as it was stated, at a reference state.
+type Reference struct {
+	VolumeFlow, Temperature, Pressure calc.Optional
 }
 
 // Field is one numeric leaf of an answer.
@@ -72,11 +80,11 @@ type Field struct {
 	Name  string
 	Block Block
 	Kind  units.Kind
-	value func(*segment.Result) (float64, bool)
+	value func(*Answer) (float64, bool)
 }
 
 // Value is the number of the leaf in SI, and whether it has a meaning here.
-func (f *Field) Value(a *Answer) (float64, bool) { return f.value(&a.Result) }
+func (f *Field) Value(a *Answer) (float64, bool) { return f.value(a) }
 
 // Text is one leaf of an answer that is no number.
 type Text struct {

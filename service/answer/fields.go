@@ -7,20 +7,33 @@ import (
 	"borewright/calc/units"
 )
 
-func always(get func(*segment.Result) float64) func(*segment.Result) (float64, bool) {
-	return func(r *segment.Result) (float64, bool) { return get(r), true }
+func always(get func(*segment.Result) float64) func(*Answer) (float64, bool) {
+	return func(a *Answer) (float64, bool) { return get(&a.Result), true }
 }
 
-func optional(get func(*segment.Result) calc.Optional) func(*segment.Result) (float64, bool) {
-	return func(r *segment.Result) (float64, bool) {
-		o := get(r)
+func optional(get func(*segment.Result) calc.Optional) func(*Answer) (float64, bool) {
+	return func(a *Answer) (float64, bool) {
+		o := get(&a.Result)
 		return o.Value, o.Valid
 	}
 }
 
 // moving is a quantity that has no meaning at rest.
-func moving(get func(*segment.Result) float64) func(*segment.Result) (float64, bool) {
-	return func(r *segment.Result) (float64, bool) { return get(r), !r.Conditions.AtRest }
+func moving(get func(*segment.Result) float64) func(*Answer) (float64, bool) {
+	return func(a *Answer) (float64, bool) { return get(&a.Result), !a.Result.Conditions.AtRest }
+}
+
+// closed is a quantity of a section that runs full.
+func closed(get func(*segment.Result) float64) func(*Answer) (float64, bool) {
+	return func(a *Answer) (float64, bool) { return get(&a.Result), !a.Result.Section.FreeSurface }
+}
+
+// stated is a quantity as the request stated it.
+func stated(get func(*Reference) calc.Optional) func(*Answer) (float64, bool) {
+	return func(a *Answer) (float64, bool) {
+		o := get(&a.Reference)
+		return o.Value, o.Valid
+	}
 }
 
 // leaf is a row of the table of leaves: a number or a text.
@@ -52,11 +65,17 @@ var leaves = [...]leaf{
 	text("phase", FluidBlock, func(a *Answer) string { return a.Result.Fluid.Phase.String() }),
 	number("vapour_pressure", FluidBlock, units.StatePressure, optional(func(r *segment.Result) calc.Optional { return r.Fluid.VapourPressure })),
 	number("sound_speed", FluidBlock, units.Velocity, optional(func(r *segment.Result) calc.Optional { return r.Fluid.SoundSpeed })),
+	number("heat_capacity_ratio", FluidBlock, units.Dimensionless, optional(func(r *segment.Result) calc.Optional { return r.Fluid.HeatCapacityRatio })),
+	number("temperature", FluidBlock, units.Temperature, optional(func(r *segment.Result) calc.Optional { return r.Fluid.Temperature })),
+	number("pressure", FluidBlock, units.StatePressure, optional(func(r *segment.Result) calc.Optional { return r.Fluid.Pressure })),
 	text("property_source", FluidBlock, func(a *Answer) string { return a.Result.Fluid.Source }),
 
 	number("mass_flow", FlowBlock, units.MassFlow, always(func(r *segment.Result) float64 { return r.Flow.MassFlow })),
 	number("volume_flow", FlowBlock, units.VolumeFlow, always(func(r *segment.Result) float64 { return r.Flow.VolumeFlow })),
 	number("velocity", FlowBlock, units.Velocity, always(func(r *segment.Result) float64 { return r.Flow.Velocity })),
+	number("reference_volume_flow", FlowBlock, units.ReferenceVolumeFlow, stated(func(r *Reference) calc.Optional { return r.VolumeFlow })),
+	number("reference_temperature", FlowBlock, units.Temperature, stated(func(r *Reference) calc.Optional { return r.Temperature })),
+	number("reference_pressure", FlowBlock, units.StatePressure, stated(func(r *Reference) calc.Optional { return r.Pressure })),
 
 	number("reynolds", RegimeBlock, units.Dimensionless, always(func(r *segment.Result) float64 { return r.Regime.Reynolds })),
 	text("flow_regime", RegimeBlock, func(a *Answer) string { return a.Result.Regime.Name.String() }),
@@ -93,11 +112,20 @@ var leaves = [...]leaf{
 	number("inlet_pressure", PressureBlock, units.StatePressure, optional(func(r *segment.Result) calc.Optional { return r.Pressure.InletPressure })),
 	number("outlet_pressure", PressureBlock, units.StatePressure, optional(func(r *segment.Result) calc.Optional { return r.Pressure.OutletPressure })),
 	number("lowest_pressure", PressureBlock, units.StatePressure, optional(func(r *segment.Result) calc.Optional { return r.Pressure.LowestPressure })),
+	number("gauge_pressure_drop", PressureBlock, units.Pressure, optional(func(r *segment.Result) calc.Optional { return r.Pressure.GaugePressureDrop })),
+	text("gas_model", PressureBlock, func(a *Answer) string { return a.Result.Pressure.GasModel.String() }),
+	number("inlet_temperature", PressureBlock, units.Temperature, optional(func(r *segment.Result) calc.Optional { return r.Pressure.InletTemperature })),
+	number("outlet_temperature", PressureBlock, units.Temperature, optional(func(r *segment.Result) calc.Optional { return r.Pressure.OutletTemperature })),
+	number("inlet_velocity", PressureBlock, units.Velocity, closed(func(r *segment.Result) float64 { return r.Pressure.InletVelocity })),
+	number("outlet_velocity", PressureBlock, units.Velocity, closed(func(r *segment.Result) float64 { return r.Pressure.OutletVelocity })),
+	number("mach_number_in", PressureBlock, units.Dimensionless, optional(func(r *segment.Result) calc.Optional { return r.Pressure.MachIn })),
+	number("mach_number_out", PressureBlock, units.Dimensionless, optional(func(r *segment.Result) calc.Optional { return r.Pressure.MachOut })),
+	number("choking_mass_flow", PressureBlock, units.MassFlow, optional(func(r *segment.Result) calc.Optional { return r.Pressure.ChokingMassFlow })),
 	number("friction_slope", PressureBlock, units.Dimensionless, optional(func(r *segment.Result) calc.Optional { return r.Pressure.FrictionSlope })),
 	number("bed_slope", PressureBlock, units.Dimensionless, optional(func(r *segment.Result) calc.Optional { return r.Pressure.BedSlope })),
 }
 
-func number(name string, b Block, kind units.Kind, value func(*segment.Result) (float64, bool)) leaf {
+func number(name string, b Block, kind units.Kind, value func(*Answer) (float64, bool)) leaf {
 	return leaf{number: &Field{Name: name, Block: b, Kind: kind, value: value}, key: `"` + name + `":`}
 }
 
@@ -132,10 +160,12 @@ func possibleRegimes(a *Answer) []string {
 }
 
 // Fields lists the numeric leaves up to a block.
-func Fields(last Block) []*Field {
+func Fields(last Block) []*Field { return fieldsBetween(SectionBlock, last) }
+
+func fieldsBetween(first, last Block) []*Field {
 	var list []*Field
 	for i := range leaves {
-		if f := leaves[i].number; f != nil && f.Block <= last {
+		if f := leaves[i].number; f != nil && f.Block >= first && f.Block <= last {
 			list = append(list, f)
 		}
 	}

@@ -6,6 +6,8 @@ import (
 	"math"
 	"strconv"
 	"unicode/utf8"
+
+	"borewright/calc/segment"
 )
 
 // ErrNotFinite is a number that must never leave the house.
@@ -25,9 +27,12 @@ func AppendJSON(dst []byte, a *Answer) ([]byte, error) {
 	if err != nil {
 		return dst, err
 	}
+	if len(a.Distribution) > 0 {
+		dst = appendDistribution(dst, a.Distribution)
+	}
 	dst = appendNotes(append(dst, `"notes":`...), a.Notes)
 	dst = append(dst, `,"units":`...)
-	dst = append(dst, unitsOf[a.Last]...)
+	dst = append(dst, unitsOf[a.First][a.Last]...)
 	dst = appendEngine(append(dst, `,"engine":`...), a.Engine)
 	dst = append(dst, `,"fingerprint":"`...)
 	dst = hex.AppendEncode(dst, a.Fingerprint[:])
@@ -39,6 +44,9 @@ func appendBlocks(dst []byte, a *Answer) ([]byte, error) {
 	for i := range leaves {
 		l := &leaves[i]
 		block := l.block()
+		if block < a.First {
+			continue
+		}
 		if block > a.Last {
 			break
 		}
@@ -56,7 +64,7 @@ func appendBlocks(dst []byte, a *Answer) ([]byte, error) {
 			dst = l.text.appendJSON(dst, a)
 			continue
 		}
-		v, valid := l.number.value(&a.Result)
+		v, valid := l.number.value(a)
 		switch {
 		case !valid:
 			dst = append(dst, "null"...)
@@ -141,19 +149,44 @@ func appendEngine(dst []byte, e Engine) []byte {
 	return append(dst, '}')
 }
 
-// unitsOf holds the units object of each door, which never changes.
-var unitsOf = func() (list [blocks][]byte) {
-	for b := SectionBlock; b < blocks; b++ {
-		object := []byte{'{'}
-		for i, f := range Fields(b) {
-			if i > 0 {
-				object = append(object, ',')
-			}
-			object = appendString(object, f.Name)
-			object = append(object, ':')
-			object = appendString(object, f.Kind.SI())
+// appendDistribution appends the gas along the line, in SI: distance in m, pressure
+// in Pa, temperature in K, velocity in m/s.
+func appendDistribution(dst []byte, points []segment.GasPoint) []byte {
+	dst = append(dst, `"distribution":[`...)
+	for i := range points {
+		p := &points[i]
+		if i > 0 {
+			dst = append(dst, ',')
 		}
-		list[b] = append(object, '}')
+		dst = AppendNumber(append(dst, `{"distance":`...), p.Distance)
+		dst = AppendNumber(append(dst, `,"pressure":`...), p.Pressure)
+		dst = AppendNumber(append(dst, `,"temperature":`...), p.Temperature)
+		dst = AppendNumber(append(dst, `,"velocity":`...), p.Velocity)
+		if p.Mach > 0 {
+			dst = AppendNumber(append(dst, `,"mach_number":`...), p.Mach)
+		} else {
+			dst = append(dst, `,"mach_number":null`...)
+		}
+		dst = append(dst, '}')
+	}
+	return append(dst, ']', ',')
+}
+
+// unitsOf holds the units object of each run of blocks, which never changes.
+var unitsOf = func() (list [blocks][blocks][]byte) {
+	for first := range blocks {
+		for last := first; last < blocks; last++ {
+			object := []byte{'{'}
+			for i, f := range fieldsBetween(first, last) {
+				if i > 0 {
+					object = append(object, ',')
+				}
+				object = appendString(object, f.Name)
+				object = append(object, ':')
+				object = appendString(object, f.Kind.SI())
+			}
+			list[first][last] = append(object, '}')
+		}
 	}
 	return list
 }()

@@ -23,7 +23,8 @@ type decoder struct {
 	structural int  // violations of what the OpenAPI document states formally
 	typed      bool // every value was typed by a person: a number needs its unit
 	// what is being filled
-	fitting *Fitting
+	fitting   *Fitting
+	reference units.Reference // that the unit of the last volume flow fixed
 }
 
 // member is one member of an object: a number of the contract, or something
@@ -35,6 +36,7 @@ type member struct {
 	read     func(d *decoder, at int32) // instead of a number
 	doors    doorSet                    // the doors that use it; 0: all
 	required doorSet                    // the doors that need it
+	foreign  bool                       // known only to be refused: it belongs to another way
 }
 
 // doorSet is a set of doors.
@@ -47,7 +49,7 @@ func doors(list ...Door) (s doorSet) {
 	return s
 }
 
-const allDoors doorSet = 1<<SectionDoor | 1<<RegimeDoor | 1<<FrictionDoor | 1<<SegmentDoor
+const allDoors doorSet = 1<<SectionDoor | 1<<RegimeDoor | 1<<FrictionDoor | 1<<SegmentDoor | 1<<FluidDoor
 
 func (s doorSet) has(d Door) bool { return s&(1<<d) != 0 }
 
@@ -199,7 +201,7 @@ func (d *decoder) unknown(at int32, members []member) {
 	}
 	var names []string
 	for i := range members {
-		if m := &members[i]; m.doors == 0 || m.doors.has(d.door) {
+		if m := &members[i]; !m.foreign && (m.doors == 0 || m.doors.has(d.door)) {
 			names = append(names, m.name)
 		}
 	}
@@ -361,6 +363,9 @@ func (d *decoder) quantityText(at int32, f FieldSpec, to *Number) {
 	if q.Basis != units.Gauge && !f.Input.Bound().Contains(q.Value) {
 		d.outOfBounds(at, f, q.Value)
 		return
+	}
+	if q.Reference.Given() {
+		d.reference = q.Reference
 	}
 	to.Value, to.Given, to.Basis = q.Value+0, true, q.Basis
 }

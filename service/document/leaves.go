@@ -59,6 +59,8 @@ func blockMembers(name string) []member {
 		return regimeMembers
 	case "site":
 		return siteMembers
+	case "surroundings":
+		return surroundingsMembers
 	}
 	return nil
 }

@@ -5,7 +5,6 @@ import (
 
 	"borewright/calc"
 	"borewright/calc/flow"
-	"borewright/calc/fluid"
 	"borewright/calc/friction"
 	"borewright/calc/units"
 )
@@ -14,9 +13,11 @@ import (
 // test compares these tables with the OpenAPI document.
 
 var (
+	fromFluid    = doors(FluidDoor, RegimeDoor, FrictionDoor, SegmentDoor)
 	fromRegime   = doors(RegimeDoor, FrictionDoor, SegmentDoor)
 	fromFriction = doors(FrictionDoor, SegmentDoor)
 	onlySegment  = doors(SegmentDoor)
+	withSection  = doors(SectionDoor, RegimeDoor, FrictionDoor, SegmentDoor)
 )
 
 // names lists the doors of the set.
@@ -30,14 +31,14 @@ func (s doorSet) names() string {
 	return strings.Join(list, ", ")
 }
 
-var doorNames = [...]string{SectionDoor: "section", RegimeDoor: "regime", FrictionDoor: "friction", SegmentDoor: "segment"}
+var doorNames = [...]string{SectionDoor: "section", RegimeDoor: "regime", FrictionDoor: "friction", SegmentDoor: "segment", FluidDoor: "fluid"}
 
 // String is the name of the door in the contract.
 func (d Door) String() string { return doorNames[d] }
 
 var requestMembers = []member{
-	{name: "section", read: (*decoder).mainSection, required: allDoors},
-	{name: "fluid", read: (*decoder).fluid, doors: fromRegime, required: fromRegime},
+	{name: "section", read: (*decoder).mainSection, doors: withSection, required: withSection},
+	{name: "fluid", read: (*decoder).fluid, doors: fromFluid, required: fromFluid},
 	{name: "flow", read: (*decoder).flow, doors: fromRegime, required: fromRegime},
 	numeric(calc.Roughness, units.Length, func(d *decoder) *Number { return &d.req.Roughness }).from(fromFriction, fromFriction),
 	{name: "friction", read: (*decoder).friction, doors: fromFriction},
@@ -49,7 +50,11 @@ var requestMembers = []member{
 	{name: "outlet", read: func(d *decoder, at int32) { d.end(at, &d.req.Outlet, "outlet", outletNames) }, doors: onlySegment},
 	numeric(calc.InletPressure, units.StatePressure, func(d *decoder) *Number { return &d.req.InletPressure }).from(onlySegment, 0),
 	numeric(calc.OutletPressure, units.StatePressure, func(d *decoder) *Number { return &d.req.OutletPressure }).from(onlySegment, 0),
-	{name: "site", read: (*decoder).site, doors: onlySegment},
+	{name: "gas_model", read: (*decoder).gasModel, doors: onlySegment},
+	{name: "answer_at_choking", read: (*decoder).answerAtChoking, doors: onlySegment},
+	numeric(calc.DistributionPoints, units.Dimensionless, func(d *decoder) *Number { return &d.req.Distribution }).from(onlySegment, 0),
+	{name: "surroundings", read: (*decoder).surroundings, doors: onlySegment},
+	{name: "site", read: (*decoder).site, doors: fromFluid},
 	{name: "id", read: func(d *decoder, at int32) { d.req.ID = d.words(at, "id") }},
 	{name: "title", read: func(d *decoder, at int32) { d.req.Title = d.words(at, "title") }},
 	{name: "tags", read: (*decoder).tags},
@@ -68,68 +73,6 @@ func (m member) from(used, required doorSet) member {
 func (m member) must() member {
 	m.required, m.field.Required = allDoors, true
 	return m
-}
-
-var fluidMembers = []member{
-	numeric(calc.Density, units.Density, func(d *decoder) *Number { return &d.req.Fluid.Density }).must(),
-	numeric(calc.DynamicViscosity, units.DynamicViscosity, func(d *decoder) *Number { return &d.req.Fluid.DynamicViscosity }),
-	numeric(calc.KinematicViscosity, units.KinematicViscosity, func(d *decoder) *Number { return &d.req.Fluid.KinematicViscosity }),
-	numeric(calc.VapourPressure, units.StatePressure, func(d *decoder) *Number { return &d.req.Fluid.VapourPressure }),
-	{name: "phase", read: func(d *decoder, at int32) {
-		d.req.Fluid.Phase = fluid.Phase(1 + d.choice(at, "phase", phaseNames))
-	}},
-}
-
-var phaseNames = []string{"liquid", "gas"}
-
-// fluid takes the two closed variants of the document: by either viscosity.
-func (d *decoder) fluid(at int32) {
-	if !d.isObject(at, "fluid") {
-		return
-	}
-	d.req.Fluid.Given = true
-	d.object(at, fluidMembers)
-	dynamic, kinematic := d.find(at, "dynamic_viscosity"), d.find(at, "kinematic_viscosity")
-	switch {
-	case dynamic != 0 && kinematic != 0:
-		d.structure(kinematic, "one_of", "dynamic_viscosity and kinematic_viscosity exclude each other; give one of them")
-	case dynamic == 0 && kinematic == 0:
-		d.missing(at, "dynamic_viscosity", "a viscosity is missing; give dynamic_viscosity in Pa.s (\"1.0 mPa.s\") or kinematic_viscosity in m2/s (\"1.0 mm2/s\")")
-	}
-}
-
-var flowMembers = []member{
-	flowMember(calc.VolumeFlow, units.VolumeFlow, flow.ByVolume),
-	flowMember(calc.MassFlow, units.MassFlow, flow.ByMass),
-	flowMember(calc.Velocity, units.Velocity, flow.ByVelocity),
-}
-
-func flowMember(in calc.Input, kind units.Kind, by flow.Measure) member {
-	return numeric(in, kind, func(d *decoder) *Number {
-		d.req.Flow.By = by
-		return &d.req.Flow.Measure
-	})
-}
-
-// flow takes exactly one measure.
-func (d *decoder) flow(at int32) {
-	if !d.isObject(at, "flow") {
-		return
-	}
-	d.req.Flow.Given = true
-	d.object(at, flowMembers)
-	measures := 0
-	for i := range flowMembers {
-		if d.find(at, flowMembers[i].name) != 0 {
-			measures++
-		}
-	}
-	switch {
-	case measures == 0:
-		d.structure(at, "one_of", `a flow is missing; give one of volume_flow ("120 m3/h"), mass_flow ("2000 kg/h") and velocity ("1.8 m/s")`)
-	case measures > 1:
-		d.structure(at, "one_of", "give exactly one of volume_flow, mass_flow and velocity, here are "+number(float64(measures)))
-	}
 }
 
 var frictionMembers = []member{
@@ -305,7 +248,7 @@ func (d *decoder) homeOf(name string) string {
 	for _, h := range []struct {
 		block   string
 		members []member
-	}{{"fluid", fluidMembers}, {"flow", flowMembers}, {"friction", frictionMembers}, {"regime", regimeMembers}, {"a fitting", fittingMembers}, {"site", siteMembers}} {
+	}{{"fluid", fluidMembers}, {"flow", flowMembers}, {"surroundings", surroundingsMembers}, {"friction", frictionMembers}, {"regime", regimeMembers}, {"a fitting", fittingMembers}, {"site", siteMembers}} {
 		for i := range h.members {
 			if h.members[i].name == name {
 				return "it belongs to " + h.block

@@ -9,6 +9,7 @@ import (
 	"borewright/calc/fluid"
 	"borewright/calc/friction"
 	"borewright/calc/section"
+	"borewright/calc/segment"
 	"borewright/calc/units"
 )
 
@@ -22,6 +23,7 @@ const (
 	RegimeDoor
 	FrictionDoor
 	SegmentDoor
+	FluidDoor
 )
 
 // Number is a quantity of a request in SI, and whether it was given at all.
@@ -58,6 +60,10 @@ type Request struct {
 	InletPressure  Number
 	OutletPressure Number
 	Site           Site
+	Surroundings   Surroundings
+	GasModel       segment.GasModel
+	AtChoking      bool   // answer a flow that chokes at the largest one that does not
+	Distribution   Number // the points of it
 
 	decoder decoder // its memory is used again by the next Read
 }
@@ -100,21 +106,65 @@ type FieldSpec struct {
 	Required bool
 }
 
-// Fluid is a fluid given by its density and one viscosity.
+// FluidWay is how a fluid is told.
+type FluidWay uint8
+
+// The ways to tell a fluid.
+const (
+	ByProperties FluidWay = iota // density and one viscosity
+	BySubstance                  // a name and a state
+	ByConstants                  // a gas by its constants and a state
+)
+
+// Fluid is a fluid told in one of the ways.
 type Fluid struct {
-	Given              bool
+	Given bool
+	Way   FluidWay
+
 	Density            Number
-	DynamicViscosity   Number // exactly one of the two viscosities is given
+	DynamicViscosity   Number // of properties and constants
 	KinematicViscosity Number
 	VapourPressure     Number
 	Phase              fluid.Phase // zero: not given
+
+	Substance   Substance
+	Saturated   fluid.Phase // of a state on the saturation line; zero: by temperature and pressure
+	Temperature Number
+	Pressure    Number
+
+	MolarMass             Number // exactly one of the two
+	RelativeDensity       Number
+	HeatCapacityRatio     Number
+	CompressibilityFactor Number
+}
+
+// Substance is a fluid by name.
+type Substance uint8
+
+// The substances.
+const (
+	Water Substance = iota + 1
+	Air
+)
+
+// String is the name of the substance in the contract.
+func (s Substance) String() string { return [...]string{"", "water", "air"}[s] }
+
+// Surroundings are what stands around the line.
+type Surroundings struct {
+	Given       bool
+	Substance   Substance
+	Temperature Number
 }
 
 // Flow is a rate of flow in exactly one of its measures.
 type Flow struct {
 	Given   bool
-	By      flow.Measure
+	By      flow.Measure // zero: a volume at a reference state
 	Measure Number
+
+	ReferenceTemperature Number
+	ReferencePressure    Number
 }
 
 // Fitting is one entry of the fittings: a loss coefficient or a rated component.
