@@ -225,7 +225,6 @@ func (d *decoder) tags(at int32) {
 		name := d.key(c)
 		if strings.TrimSpace(name) == "" {
 			d.violate(c, "unknown_field", "a tag has a blank name")
-			continue
 		}
 		d.req.Tags = append(d.req.Tags, Tag{Name: name, Text: d.tagText(c)})
 	}
