@@ -1,5 +1,7 @@
 package document
 
+import "fmt"
+
 // StructureAccepts tells whether the body can be read as one document without
 // duplicate names and overflowing numbers, and whether the reader then finds all
 // that the OpenAPI document states formally. What only the meaning of the values
@@ -42,4 +44,11 @@ func Strings(body []byte) (list []string) {
 		}
 	}
 	return list
+}
+
+// Shown prints what a request holds, without the memory of its decoder.
+func Shown(req *Request) string {
+	r := *req
+	r.decoder = decoder{}
+	return fmt.Sprintf("%+v", r)
 }
