@@ -135,7 +135,9 @@ func FuzzRead(f *testing.F) {
 		f.Add(uint8(i), []byte(mustMarshal(f, m)))
 	}
 	for i, c := range badInputs {
-		f.Add(uint8(i), []byte(c.body))
+		if len(c.body) < 1000 { // long ones only slow the search down
+			f.Add(uint8(i), []byte(c.body))
+		}
 	}
 	f.Fuzz(func(t *testing.T, d uint8, body []byte) {
 		var req document.Request
