@@ -30,7 +30,8 @@ const MaxVertices = 10000
 //   - x: horizontal coordinate [m]
 //   - y: vertical coordinate [m]
 //
-// Validity: a simple polygon of 3 to 10000 vertices.
+// Validity: a simple polygon of 3 to 10000 vertices that is no sliver: its area is
+// above 1e-8 of the strips under its edges, whose difference it is.
 //
 // Source: elementary geometry.
 //
@@ -45,6 +46,9 @@ func (p Polygon) Full() (Properties, error) {
 	}
 	_, top := p.levels()
 	l := p.pool(top)
+	if l.sliver() {
+		return Properties{}, sliverError()
+	}
 	return outline{area: l.area, perimeter: p.wettedLength()}.full()
 }
 
@@ -91,14 +95,30 @@ func (p Polygon) PartlyFull(liquidDepth float64) (Properties, error) {
 	}
 	l := p.pool(level)
 	l.depth, l.height = liquidDepth, height
-	if l.width <= 0 {
+	if l.width <= 0 || liquidDepth == height && l.width <= noWidth*height {
 		return p.Full()
 	}
 	if l.perimeter == 0 {
 		return Properties{}, allDry()
 	}
+	if l.sliver() {
+		return Properties{}, sliverError()
+	}
 	return l.properties()
 }
+
+// sliver reports whether rounding of the coordinates would hide the area: it is the
+// difference of strips that are far larger.
+func (l *pool) sliver() bool { return l.area <= thinnest*l.strips }
+
+const thinnest = 1e-8
+
+func sliverError() error {
+	return vertexError("this outline is a sliver, so thin that rounding of its coordinates hides its area; give a wider one")
+}
+
+// noWidth times its height is a width that the top of a polygon has by rounding alone.
+const noWidth = 1e-13
 
 func allDry() error {
 	return &calc.Error{Kind: calc.ErrDomain, Quantity: "dry_edges", Detail: "at least one edge in the liquid must be wetted"}
@@ -141,7 +161,9 @@ func (p Polygon) pool(level float64) pool {
 			part = (wa + wb) / (math.Abs(da) + math.Abs(db)) // one of the two is 0
 		}
 		dx := (b[0] - a[0]) * part
-		l.area += (wa + wb) / 2 * dx
+		strip := (wa + wb) / 2 * dx
+		l.area += strip
+		l.strips += math.Abs(strip)
 		l.moment += (wa*wa + wa*wb + wb*wb) / 6 * dx
 		l.width += dx
 		if len(p.DryEdges) == 0 || !slices.Contains(p.DryEdges, i) {

@@ -143,6 +143,7 @@ func (p *Properties) check() error {
 // and the first moment of the area about it.
 type pool struct {
 	area, perimeter, width, moment float64
+	strips                         float64 // of a polygon, the magnitudes that its area is made of
 	depth, height                  float64 // height 0: open, without a crown
 }
 
@@ -164,6 +165,10 @@ func (l *pool) into(p *Properties) error {
 	p.CentroidDepth = calc.Some(l.moment / l.area)
 	if l.height > 0 {
 		p.FillRatio = calc.Some(l.depth / l.height)
+	}
+	if !calc.Finite(p.MeanDepth.Value) {
+		*p = Properties{}
+		return &calc.Error{Kind: calc.ErrDomain, Quantity: "liquid_depth", Value: l.depth, Detail: "at this depth the section is too narrow for a free surface"}
 	}
 	return p.check()
 }
