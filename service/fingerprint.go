@@ -144,7 +144,7 @@ func (w *work) segmentInputs(c *canonical, out *answer.Answer) {
 	c.optional(w.in.OutletPressure)
 	c.number(float64(out.Result.Pressure.GasModel))
 	c.number(float64(len(out.Distribution)))
-	c.optional(out.Result.Pressure.AskedMassFlow)
+	c.optional(out.Result.Gas.AskedMassFlow)
 	c.optional(w.in.SurroundingsDensity)
 	c.number(float64(w.req.Inlet.Kind))
 	c.section(&w.req.Inlet.Section, w.in.Inlet.Section.Shape)

@@ -52,7 +52,7 @@ func (out *Result) atChoking(in *Input, asked, most float64) error {
 		return err
 	}
 	out.Conditions.Choked = true
-	out.Pressure.ChokingMassFlow, out.Pressure.AskedMassFlow = calc.Some(most), calc.Some(asked)
+	out.Gas.ChokingMassFlow, out.Gas.AskedMassFlow = calc.Some(most), calc.Some(asked)
 	return nil
 }
 

@@ -53,6 +53,13 @@ type GasRun struct {
 	Line     gas.Line     // the constant area between the ends, the larger friction in it
 	Stations [4]gas.State // inlet end, first and last of the line, outlet end
 	AtOutlet bool         // the state at the outlet end was given
+
+	InletTemperature  calc.Optional // [K]
+	OutletTemperature calc.Optional // [K]
+	MachIn            calc.Optional // not Valid where the heat capacity ratio is not known
+	MachOut           calc.Optional
+	ChokingMassFlow   calc.Optional // the largest that passes, where more was asked for [kg/s]
+	AskedMassFlow     calc.Optional // [kg/s]
 }
 
 // gasDuct is a segment with a compressible gas in it, ready to be integrated.
@@ -244,10 +251,10 @@ func (out *Result) gasAccount(in *Input, d *gasDrops) {
 	s := &out.Gas.Stations
 	p.InletVelocity, p.OutletVelocity = s[0].Velocity, s[3].Velocity
 	p.InletPressure, p.OutletPressure = calc.Some(s[0].Pressure), calc.Some(s[3].Pressure)
-	p.InletTemperature, p.OutletTemperature = calc.Some(s[0].Temperature), calc.Some(s[3].Temperature)
+	out.Gas.InletTemperature, out.Gas.OutletTemperature = calc.Some(s[0].Temperature), calc.Some(s[3].Temperature)
 	p.LowestPressure = calc.Some(min(s[0].Pressure, s[1].Pressure, s[2].Pressure, s[3].Pressure))
 	if in.Fluid.HeatCapacityRatio.Valid {
-		p.MachIn, p.MachOut = calc.Some(s[0].Mach), calc.Some(s[3].Mach)
+		out.Gas.MachIn, out.Gas.MachOut = calc.Some(s[0].Mach), calc.Some(s[3].Mach)
 	}
 }
 

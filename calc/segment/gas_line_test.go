@@ -79,12 +79,12 @@ func TestGasSegmentsAgainstReferenceValues(t *testing.T) {
 			}
 			answered++
 			bound := 1e-9
-			if out.Pressure.MachOut.Value > 0.8 {
+			if out.Gas.MachOut.Value > 0.8 {
 				bound = 1e-7
 			}
 			within(t, "outlet pressure", out.Pressure.OutletPressure.Value, r.number(t, "outlet_pressure_Pa"), bound)
-			within(t, "outlet Mach number", out.Pressure.MachOut.Value, r.number(t, "outlet_mach"), bound)
-			within(t, "inlet Mach number", out.Pressure.MachIn.Value, r.number(t, "inlet_mach"), bound)
+			within(t, "outlet Mach number", out.Gas.MachOut.Value, r.number(t, "outlet_mach"), bound)
+			within(t, "inlet Mach number", out.Gas.MachIn.Value, r.number(t, "inlet_mach"), bound)
 		}
 		if answered < 50 || choked == 0 {
 			t.Errorf("%s: %d answered, %d choked", c.file, answered, choked)
@@ -152,7 +152,7 @@ func TestSlowGasMeetsTheIncompressibleAccount(t *testing.T) {
 		in.GasModel = segment.Incompressible
 		incompressible := solve(t, in)
 		drop := math.Abs(incompressible.Pressure.FrictionDrop) + math.Abs(incompressible.Pressure.ElevationDrop.Value) + math.Abs(incompressible.Pressure.FittingsDrop) + math.Abs(incompressible.Pressure.AccelerationDrop.Value)
-		bound := 3*drop/in.Fluid.Pressure.Value + 3*math.Pow(compressible.Pressure.MachOut.Value, 2)
+		bound := 3*drop/in.Fluid.Pressure.Value + 3*math.Pow(compressible.Gas.MachOut.Value, 2)
 		for _, part := range [...]struct {
 			name string
 			a, b float64
@@ -179,23 +179,23 @@ func TestStateAtEitherEndIsTheSameSegment(t *testing.T) {
 		if err := segment.PressureDrop(&in, &out); err != nil {
 			return
 		}
-		if out.Pressure.MachOut.Value > 0.7 || out.Regime.CanBeLaminar {
+		if out.Gas.MachOut.Value > 0.7 || out.Regime.CanBeLaminar {
 			return // near choking the inlet is ill-conditioned
 		}
 		p, back := &out.Pressure, in
-		density := in.Fluid.Density * (p.OutletPressure.Value / in.Fluid.Pressure.Value) * (in.Fluid.Temperature.Value / p.OutletTemperature.Value)
+		density := in.Fluid.Density * (p.OutletPressure.Value / in.Fluid.Pressure.Value) * (in.Fluid.Temperature.Value / out.Gas.OutletTemperature.Value)
 		back.Fluid.Density, back.Fluid.KinematicViscosity = density, in.Fluid.DynamicViscosity/density
-		back.Fluid.Pressure, back.Fluid.Temperature, back.OutletPressure = p.OutletPressure, p.OutletTemperature, p.OutletPressure
+		back.Fluid.Pressure, back.Fluid.Temperature, back.OutletPressure = p.OutletPressure, out.Gas.OutletTemperature, p.OutletPressure
 		if len(back.Fittings) == 2 { // a rated component has another coefficient at another density
 			back.Fittings, in.Fittings = back.Fittings[:1], in.Fittings[:1]
 			out = solve(t, in)
-			density = in.Fluid.Density * (p.OutletPressure.Value / in.Fluid.Pressure.Value) * (in.Fluid.Temperature.Value / p.OutletTemperature.Value)
+			density = in.Fluid.Density * (p.OutletPressure.Value / in.Fluid.Pressure.Value) * (in.Fluid.Temperature.Value / out.Gas.OutletTemperature.Value)
 			back.Fluid.Density, back.Fluid.KinematicViscosity = density, in.Fluid.DynamicViscosity/density
-			back.Fluid.Pressure, back.Fluid.Temperature, back.OutletPressure = p.OutletPressure, p.OutletTemperature, p.OutletPressure
+			back.Fluid.Pressure, back.Fluid.Temperature, back.OutletPressure = p.OutletPressure, out.Gas.OutletTemperature, p.OutletPressure
 		}
 		again := solve(t, back)
 		near(t, "inlet pressure", again.Pressure.InletPressure.Value, in.Fluid.Pressure.Value, 1e4*in.Fluid.Pressure.Value)
-		near(t, "inlet temperature", again.Pressure.InletTemperature.Value, in.Fluid.Temperature.Value, 1e4*in.Fluid.Temperature.Value)
+		near(t, "inlet temperature", again.Gas.InletTemperature.Value, in.Fluid.Temperature.Value, 1e4*in.Fluid.Temperature.Value)
 	})
 }
 
@@ -208,15 +208,15 @@ func TestAnswerAtChokingIsTheLargestFlow(t *testing.T) {
 				in.Rise = calc.Some(rise)
 			}
 			out := solve(t, in)
-			most := out.Pressure.ChokingMassFlow.Value
-			if !out.Conditions.Choked || out.Flow.MassFlow != most || out.Pressure.AskedMassFlow.Value != 50 {
+			most := out.Gas.ChokingMassFlow.Value
+			if !out.Conditions.Choked || out.Flow.MassFlow != most || out.Gas.AskedMassFlow.Value != 50 {
 				t.Errorf("%v: %+v at %v kg/s", model, out.Conditions, out.Flow.MassFlow)
 			}
 			limit := 1.0
 			if model == segment.Isothermal {
 				limit = 1 / math.Sqrt(1.4)
 			}
-			if mach := out.Pressure.MachOut.Value; !(mach > limit*(1-1e-3) && mach <= limit*(1+1e-12)) {
+			if mach := out.Gas.MachOut.Value; !(mach > limit*(1-1e-3) && mach <= limit*(1+1e-12)) {
 				t.Errorf("%v leaves at Mach number %v, its limit is %v", model, mach, limit)
 			}
 			in.AnswerAtChoking = false

@@ -36,7 +36,10 @@ func Regime(in *Input, out *Result) error {
 }
 
 func (in *Input) regime(out *Result) error {
-	out.Fluid, out.Friction, out.Pressure, out.Conditions, out.Gas = in.Fluid, friction.Result{}, Pressure{}, Conditions{}, GasRun{} // the rest is set below
+	out.Fluid, out.Friction, out.Pressure, out.Conditions = in.Fluid, friction.Result{}, Pressure{}, Conditions{} // the rest is set below
+	if out.Gas.Stations[0].Pressure != 0 {                                                                        // of a gas before; most lines have none
+		out.Gas = GasRun{}
+	}
 	var err error
 	if err = in.Section.Into(&out.Section); err != nil {
 		return err

@@ -85,13 +85,7 @@ type Pressure struct {
 
 	GaugePressureDrop calc.Optional // what gauges at both ends show [Pa]
 
-	GasModel          GasModel // zero for a liquid
-	InletTemperature  calc.Optional
-	OutletTemperature calc.Optional
-	MachIn            calc.Optional
-	MachOut           calc.Optional
-	ChokingMassFlow   calc.Optional // the largest that passes, where more was asked for [kg/s]
-	AskedMassFlow     calc.Optional // [kg/s]
+	GasModel GasModel // zero for a liquid
 
 	FrictionSlope calc.Optional // only with a free surface [1]
 	BedSlope      calc.Optional // -rise/length [1]
