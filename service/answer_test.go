@@ -15,6 +15,7 @@ import (
 	"borewright/service"
 	"borewright/service/answer"
 	"borewright/service/document"
+	"borewright/service/jsontext"
 )
 
 var answerTypes = map[document.Door]func() any{
@@ -224,7 +225,7 @@ func TestSmallerDoorsAnswerTheSameDigits(t *testing.T) {
 // TestNumbersReadBackBitForBit drives the writer of numbers.
 func TestNumbersReadBackBitForBit(t *testing.T) {
 	for _, v := range []float64{0, 1, -1, 0.1, 1e-6, math.Nextafter(1e-6, 0), 1e-9, 1e-10, 1e-300, 5e-324, 1e20, 1e21, 1.5e300, math.MaxFloat64, -2.5e-7, 1.0 / 3} {
-		text := answer.AppendNumber(nil, v)
+		text := jsontext.AppendNumber(nil, v)
 		var back float64
 		if err := json.Unmarshal(text, &back); err != nil || math.Float64bits(back) != math.Float64bits(v) {
 			t.Errorf("%v is written as %s, read as %v, %v", v, text, back, err)
@@ -238,7 +239,7 @@ func TestNumbersReadBackBitForBit(t *testing.T) {
 // TestMinusZeroIsWrittenZero: a level line has a bed slope of 0 and not of -0,
 // and one fingerprint stands for one answer.
 func TestMinusZeroIsWrittenZero(t *testing.T) {
-	if text := answer.AppendNumber(nil, math.Copysign(0, -1)); string(text) != "0" {
+	if text := jsontext.AppendNumber(nil, math.Copysign(0, -1)); string(text) != "0" {
 		t.Errorf("minus zero is written %s", text)
 	}
 	level := with(pump(), object{"rise": 0.0, "section/liquid_depth": 0.06, "inlet_pressure": nil})

@@ -3,11 +3,10 @@ package answer
 import (
 	"encoding/hex"
 	"errors"
-	"math"
 	"strconv"
-	"unicode/utf8"
 
 	"borewright/calc/segment"
+	"borewright/service/jsontext"
 )
 
 // ErrNotFinite is a number that must never leave the house.
@@ -18,10 +17,10 @@ var ErrNotFinite = errors.New("an answer holds a number that is not finite")
 func AppendJSON(dst []byte, a *Answer) ([]byte, error) {
 	dst = append(dst, '{')
 	if a.ID != "" {
-		dst = append(appendString(append(dst, `"id":`...), a.ID), ',')
+		dst = append(jsontext.AppendString(append(dst, `"id":`...), a.ID), ',')
 	}
 	if a.Title != "" {
-		dst = append(appendString(append(dst, `"title":`...), a.Title), ',')
+		dst = append(jsontext.AppendString(append(dst, `"title":`...), a.Title), ',')
 	}
 	dst, err := appendBlocks(dst, a)
 	if err != nil {
@@ -71,7 +70,7 @@ func appendBlocks(dst []byte, a *Answer) ([]byte, error) {
 		case v-v != 0:
 			return dst, ErrNotFinite
 		default:
-			dst = AppendNumber(dst, v)
+			dst = jsontext.AppendNumber(dst, v)
 		}
 	}
 	return append(dst, '}', ','), nil
@@ -89,7 +88,7 @@ func (t *Text) appendJSON(dst []byte, a *Answer) []byte {
 		return appendList(dst, t.list(a))
 	}
 	if v := t.one(a); v != "" {
-		return appendString(dst, v)
+		return jsontext.AppendString(dst, v)
 	}
 	return append(dst, "null"...)
 }
@@ -100,25 +99,9 @@ func appendList(dst []byte, values []string) []byte {
 		if i > 0 {
 			dst = append(dst, ',')
 		}
-		dst = appendString(dst, v)
+		dst = jsontext.AppendString(dst, v)
 	}
 	return append(dst, ']')
-}
-
-// AppendNumber appends the shortest text that reads back as the same number, in
-// the form of JSON. Minus zero is written 0: inputs that differ by that sign
-// alone have one fingerprint, and so one answer.
-func AppendNumber(dst []byte, v float64) []byte {
-	v += 0
-	if a := math.Abs(v); a != 0 && (a < 1e-6 || a >= 1e21) {
-		dst = strconv.AppendFloat(dst, v, 'e', -1, 64)
-		if n := len(dst); n >= 4 && dst[n-4] == 'e' && dst[n-2] == '0' { // e-09 becomes e-9
-			dst[n-2] = dst[n-1]
-			dst = dst[:n-1]
-		}
-		return dst
-	}
-	return strconv.AppendFloat(dst, v, 'f', -1, 64)
 }
 
 func appendNotes(dst []byte, notes []Note) []byte {
@@ -130,12 +113,12 @@ func appendNotes(dst []byte, notes []Note) []byte {
 		}
 		dst = append(append(append(dst, `{"code":"`...), n.Code...), `","level":"`...)
 		dst = append(append(append(dst, n.Level.String()...), '"'), `,"text":`...)
-		dst = appendString(dst, n.Text)
+		dst = jsontext.AppendString(dst, n.Text)
 		if n.Source != "" {
-			dst = appendString(append(dst, `,"source":`...), n.Source)
+			dst = jsontext.AppendString(append(dst, `,"source":`...), n.Source)
 		}
 		if n.Pointer != "" {
-			dst = appendString(append(dst, `,"pointer":`...), n.Pointer)
+			dst = jsontext.AppendString(append(dst, `,"pointer":`...), n.Pointer)
 		}
 		dst = append(dst, '}')
 	}
@@ -143,9 +126,9 @@ func appendNotes(dst []byte, notes []Note) []byte {
 }
 
 func appendEngine(dst []byte, e Engine) []byte {
-	dst = appendString(append(dst, `{"version":`...), e.Version)
+	dst = jsontext.AppendString(append(dst, `{"version":`...), e.Version)
 	dst = strconv.AppendInt(append(dst, `,"method_revision":`...), int64(e.MethodRevision), 10)
-	dst = appendString(append(dst, `,"platform":`...), e.Platform)
+	dst = jsontext.AppendString(append(dst, `,"platform":`...), e.Platform)
 	return append(dst, '}')
 }
 
@@ -158,12 +141,12 @@ func appendDistribution(dst []byte, points []segment.GasPoint) []byte {
 		if i > 0 {
 			dst = append(dst, ',')
 		}
-		dst = AppendNumber(append(dst, `{"distance":`...), p.Distance)
-		dst = AppendNumber(append(dst, `,"pressure":`...), p.Pressure)
-		dst = AppendNumber(append(dst, `,"temperature":`...), p.Temperature)
-		dst = AppendNumber(append(dst, `,"velocity":`...), p.Velocity)
+		dst = jsontext.AppendNumber(append(dst, `{"distance":`...), p.Distance)
+		dst = jsontext.AppendNumber(append(dst, `,"pressure":`...), p.Pressure)
+		dst = jsontext.AppendNumber(append(dst, `,"temperature":`...), p.Temperature)
+		dst = jsontext.AppendNumber(append(dst, `,"velocity":`...), p.Velocity)
 		if p.Mach > 0 {
-			dst = AppendNumber(append(dst, `,"mach_number":`...), p.Mach)
+			dst = jsontext.AppendNumber(append(dst, `,"mach_number":`...), p.Mach)
 		} else {
 			dst = append(dst, `,"mach_number":null`...)
 		}
@@ -181,42 +164,12 @@ var unitsOf = func() (list [blocks][blocks][]byte) {
 				if i > 0 {
 					object = append(object, ',')
 				}
-				object = appendString(object, f.Name)
+				object = jsontext.AppendString(object, f.Name)
 				object = append(object, ':')
-				object = appendString(object, f.Kind.SI())
+				object = jsontext.AppendString(object, f.Kind.SI())
 			}
 			list[first][last] = append(object, '}')
 		}
 	}
 	return list
 }()
-
-const hexDigits = "0123456789abcdef"
-
-// appendString appends a JSON string. Text that is not UTF-8 cannot come here:
-// the reader refuses it.
-func appendString(dst []byte, s string) []byte {
-	dst = append(dst, '"')
-	start := 0
-	for i := 0; i < len(s); i++ {
-		c := s[i]
-		if c >= 0x20 && c != '"' && c != '\\' && c < utf8.RuneSelf || c >= utf8.RuneSelf {
-			continue
-		}
-		dst = append(dst, s[start:i]...)
-		switch c {
-		case '"', '\\':
-			dst = append(dst, '\\', c)
-		case '\n':
-			dst = append(dst, '\\', 'n')
-		case '\t':
-			dst = append(dst, '\\', 't')
-		case '\r':
-			dst = append(dst, '\\', 'r')
-		default:
-			dst = append(dst, '\\', 'u', '0', '0', hexDigits[c>>4], hexDigits[c&15])
-		}
-		start = i + 1
-	}
-	return append(append(dst, s[start:]...), '"')
-}

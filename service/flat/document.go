@@ -1,0 +1,127 @@
+package flat
+
+import (
+	"encoding/json"
+	"fmt"
+	"strings"
+	"unicode/utf8"
+
+	"borewright/service/document"
+	"borewright/service/jsontext"
+)
+
+// Pair is a name and what was typed for it.
+type Pair struct{ Name, Text string }
+
+// Codes of what is wrong with names, before any value is read.
+const (
+	CodeUnknownName = "unknown_name"
+	CodeRepeated    = "repeated_name"
+	CodeBlank       = "blank"
+)
+
+// AppendDocument appends the request document that the pairs mean, every value as
+// text, for [document.ReadTyped]. What is wrong with the names is told by them; the
+// values are the reader's business.
+func AppendDocument(dst []byte, pairs []Pair) ([]byte, []document.Violation) {
+	if wrong := faults(pairs); wrong != nil {
+		return dst, wrong
+	}
+	var wrong []document.Violation
+	dst = append(dst, '{')
+	start := len(dst)
+	for _, block := range blockOrder {
+		dst = appendBlock(dst, start, block, pairs, &wrong)
+	}
+	return append(dst, '}'), wrong
+}
+
+// Faults are the unknown, repeated and blank names among the pairs.
+func faults(pairs []Pair) []document.Violation {
+	var wrong []document.Violation
+	refuse := func(name, code, detail string) {
+		wrong = append(wrong, document.Violation{Parameter: name, Code: code, Detail: detail})
+	}
+	for i, p := range pairs {
+		switch {
+		case entries[p.Name] == nil:
+			refuse(p.Name, CodeUnknownName, unknown(p.Name))
+		case repeated(pairs[:i], p.Name):
+			refuse(p.Name, CodeRepeated, p.Name+" stands twice; give it once")
+		case strings.TrimSpace(p.Text) == "":
+			refuse(p.Name, CodeBlank, "a value is missing for "+p.Name+"; leave the name out, or give one")
+		case !utf8.ValidString(p.Text):
+			refuse(p.Name, "not_utf8", "these bytes are not UTF-8")
+		}
+	}
+	return wrong
+}
+
+func repeated(before []Pair, name string) bool {
+	for i := range before {
+		if before[i].Name == name {
+			return true
+		}
+	}
+	return false
+}
+
+func unknown(name string) string {
+	detail := fmt.Sprintf("%q is not known here", name)
+	if offer := Nearest(name); offer != "" {
+		return detail + "; did you mean " + offer + "?"
+	}
+	return detail + "; /openapi.yaml lists the names"
+}
+
+// appendBlock appends the members that the pairs give to a block.
+func appendBlock(dst []byte, start int, block string, pairs []Pair, wrong *[]document.Violation) []byte {
+	open := block == ""
+	for i := range pairs {
+		p := &pairs[i]
+		e := entries[p.Name]
+		if e.block != block {
+			continue
+		}
+		if !open {
+			if hasEnd(pairs, block) {
+				*wrong = append(*wrong, document.Violation{Parameter: p.Name, Code: "one_of",
+					Detail: "the " + block + " is named already; leave " + block + " out to describe its section"})
+				return dst
+			}
+			dst = append(append(append(comma(dst, start), '"'), block...), `":{`...)
+			open, start = true, len(dst)
+		}
+		dst = append(append(append(comma(dst, start), '"'), e.key...), `":`...)
+		dst = appendValue(dst, e, p, wrong)
+	}
+	if open && block != "" {
+		dst = append(dst, '}')
+	}
+	return dst
+}
+
+// hasEnd reports whether an end is given by its name as well.
+func hasEnd(pairs []Pair, block string) bool {
+	return (block == "inlet" || block == "outlet") && repeated(pairs, block)
+}
+
+func comma(dst []byte, start int) []byte {
+	if len(dst) > start {
+		return append(dst, ',')
+	}
+	return dst
+}
+
+func appendValue(dst []byte, e *entry, p *Pair, wrong *[]document.Violation) []byte {
+	switch {
+	case e.key == "fittings":
+		return appendFittings(dst, p.Text, wrong)
+	case e.deep && json.Valid([]byte(p.Text)):
+		return append(dst, p.Text...)
+	case e.deep:
+		*wrong = append(*wrong, document.Violation{Parameter: p.Name, Code: "malformed_json", Detail: p.Name + ` is JSON in one cell, such as [["0 m", "0 m"], ["1 m", "0 m"], ["0 m", "1 m"]]`})
+		return append(dst, "null"...)
+	}
+	return jsontext.AppendString(dst, p.Text)
+}
