@@ -6,6 +6,7 @@ import (
 
 	"github.com/labstack/echo/v4"
 
+	"borewright/service/answer"
 	"borewright/service/document"
 )
 
@@ -18,8 +19,13 @@ func (a *API) calculation(door document.Door) echo.HandlerFunc {
 		if err := checkMediaType(r.Header); err != nil {
 			return err
 		}
+		var report *answer.Report
 		if r.URL.RawQuery != "" {
-			if _, err := readQuery(r.URL.RawQuery); err != nil {
+			q, err := readQuery(r.URL.RawQuery, "report_units")
+			if err != nil {
+				return err
+			}
+			if report, err = readReport(q[0]); err != nil {
 				return err
 			}
 		}
@@ -29,7 +35,7 @@ func (a *API) calculation(door document.Door) echo.HandlerFunc {
 		if x.body, err = readBody(r, x.body[:0]); err != nil {
 			return err
 		}
-		if x.answer, err = a.service.AnswerJSON(x.answer[:0], x.body, door); err != nil {
+		if x.answer, err = a.service.AnswerIn(x.answer[:0], x.body, door, report); err != nil {
 			return err
 		}
 		if a.judge != nil {

@@ -12,15 +12,18 @@ import (
 
 	"borewright/openapi"
 	"borewright/service"
+	"borewright/service/answer"
 	"borewright/service/document"
 )
 
 // Answerer is what the HTTP face asks for. [service.Service] is the one that
 // calculates; tests put a failing one in its place.
 type Answerer interface {
-	// AnswerJSON appends the answer to one JSON request to dst. Its error is a
-	// *document.Refusal where the request is to blame.
-	AnswerJSON(dst, body []byte, door document.Door) ([]byte, error)
+	// AnswerIn appends the answer to one JSON request, in the units of the report,
+	// to dst. Its error is a *document.Refusal where the request is to blame.
+	AnswerIn(dst, body []byte, door document.Door, r *answer.Report) ([]byte, error)
+	// Ask answers one calculation asked by flat names.
+	Ask(dst []byte, q *service.Query) (service.Reply, error)
 	// Convert gives a quantity with its unit in another unit.
 	Convert(quantity, to string) (service.Conversion, error)
 }
@@ -78,6 +81,7 @@ func (a *API) routes() {
 		"/v1/segment":  document.SegmentDoor,
 	} {
 		a.echo.POST(path, a.calculation(door))
+		a.get(path, a.question(door))
 	}
 	a.get("/v1/convert", a.convert)
 	a.get("/openapi.json", fixed("application/json", a.document))

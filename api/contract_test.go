@@ -89,8 +89,12 @@ func (o operation) bodies(t testing.TB) map[string]string {
 	return list
 }
 
-// target is the path with the examples of its query parameters.
+// target is the path with the example of its query, or the examples of its query
+// parameters where they can stand together.
 func (o operation) target() string {
+	if whole, ok := o.Extensions["x-example-query"].(string); ok {
+		return o.path + "?" + whole
+	}
 	var query []string
 	for _, p := range o.Parameters {
 		if v, ok := p.Value.Example.(string); ok && p.Value.In == "query" && p.Value.Name != "pick" {
@@ -114,6 +118,7 @@ func provoke(t *testing.T, o operation, status int) (*api.API, *http.Request) {
 	}
 	switch status {
 	case 200:
+	case 304:
 	case 400:
 		body = "{"
 	case 413:
@@ -139,6 +144,9 @@ func provoke(t *testing.T, o operation, status int) (*api.API, *http.Request) {
 	r := httptest.NewRequest(o.method, target, strings.NewReader(body))
 	if o.method == http.MethodPost {
 		r.Header.Set("Content-Type", media)
+	}
+	if status == http.StatusNotModified {
+		r.Header.Set("If-None-Match", "*")
 	}
 	return face, r
 }

@@ -12,6 +12,7 @@ import (
 
 	"borewright/api"
 	"borewright/service"
+	"borewright/service/answer"
 	"borewright/service/document"
 )
 
@@ -21,8 +22,13 @@ type answerer struct {
 	convert func(quantity, to string) (service.Conversion, error)
 }
 
-func (a answerer) AnswerJSON(dst, body []byte, door document.Door) ([]byte, error) {
+func (a answerer) AnswerIn(dst, body []byte, door document.Door, _ *answer.Report) ([]byte, error) {
 	return a.json(dst, body, door)
+}
+
+func (a answerer) Ask(dst []byte, q *service.Query) (service.Reply, error) {
+	body, err := a.json(dst, nil, q.Door)
+	return service.Reply{Body: body, Text: q.Pick != ""}, err
 }
 
 func (a answerer) Convert(quantity, to string) (service.Conversion, error) {

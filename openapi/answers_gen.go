@@ -132,6 +132,21 @@ func (e NoteLevel) Valid() bool {
 	}
 }
 
+// Defines values for OnErrorText.
+const (
+	Text OnErrorText = "text"
+)
+
+// Valid indicates whether the value is a known member of the OnErrorText enum.
+func (e OnErrorText) Valid() bool {
+	switch e {
+	case Text:
+		return true
+	default:
+		return false
+	}
+}
+
 // Defines values for Phase.
 const (
 	Gas    Phase = "gas"
@@ -189,6 +204,24 @@ func (e RoughnessRegime) Valid() bool {
 	case RoughnessRegimeSmooth:
 		return true
 	case RoughnessRegimeTransitional:
+		return true
+	default:
+		return false
+	}
+}
+
+// Defines values for YesOrNo.
+const (
+	False YesOrNo = "false"
+	True  YesOrNo = "true"
+)
+
+// Valid indicates whether the value is a known member of the YesOrNo enum.
+func (e YesOrNo) Valid() bool {
+	switch e {
+	case False:
+		return true
+	case True:
 		return true
 	default:
 		return false
@@ -540,6 +573,11 @@ type Engine struct {
 // Example: 6e3d9d8e2f4b7a0c1d5e8f9a0b1c2d3e4f5a6b7c8d9e0f1a2b3c4d5e6f7a8b9c
 type Fingerprint = string
 
+// FlatText A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type FlatText = string
+
 // FlowRegime Name of the flow regime.
 //
 // Example: turbulent
@@ -660,6 +698,11 @@ type Health struct {
 // Example: ready
 type HealthStatus string
 
+// LeafName Name of a leaf of the answer, or fingerprint.
+//
+// Example: static_pressure_drop
+type LeafName = string
+
 // Name Free text; it has no part in the calculation or the fingerprint.
 //
 // Example: CHW-101
@@ -704,6 +747,11 @@ type NoteLevel string
 //
 // Example: [{"code":"defaults_used","level":"info","text":"Taken as default: friction_law colebrook_white."}]
 type Notes = []Note
+
+// OnErrorText How a refusal is answered.
+//
+// Example: text
+type OnErrorText string
 
 // Phase Phase of the fluid. Default by density: liquid above 100 kg/m3, gas below 50; between, it must be said.
 //
@@ -855,6 +903,11 @@ type RegimeAnswer struct {
 	Units Units `json:"units"`
 }
 
+// ReportUnits A system of units, or kinds of quantity with their units.
+//
+// Example: plant
+type ReportUnits = string
+
 // RequestId Finds the request in the log; X-Request-Id of the request where it was given.
 //
 // Example: b7Fq2-000041
@@ -994,6 +1047,636 @@ type UnitText = string
 //
 // Example: {"flow_area":"m2"}
 type Units map[string]UnitText
+
+// YesOrNo Yes or no.
+//
+// Example: true
+type YesOrNo string
+
+// AcceptLimitsParameter Yes or no.
+//
+// Example: true
+type AcceptLimitsParameter = YesOrNo
+
+// AltitudeParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type AltitudeParameter = FlatText
+
+// AngleParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type AngleParameter = FlatText
+
+// AnswerAtChokingParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type AnswerAtChokingParameter = FlatText
+
+// ApexOffsetParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type ApexOffsetParameter = FlatText
+
+// ApproachFlowParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type ApproachFlowParameter = FlatText
+
+// AtmosphericPressureParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type AtmosphericPressureParameter = FlatText
+
+// BankLeftParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type BankLeftParameter = FlatText
+
+// BankRightParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type BankRightParameter = FlatText
+
+// BaseParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type BaseParameter = FlatText
+
+// BottomWidthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type BottomWidthParameter = FlatText
+
+// CalmLaminarToReynoldsParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type CalmLaminarToReynoldsParameter = FlatText
+
+// CompressibilityFactorParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type CompressibilityFactorParameter = FlatText
+
+// CornerRadiusParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type CornerRadiusParameter = FlatText
+
+// DensityParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type DensityParameter = FlatText
+
+// DiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type DiameterParameter = FlatText
+
+// DistributionPointsParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type DistributionPointsParameter = FlatText
+
+// DryEdgesParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type DryEdgesParameter = FlatText
+
+// DynamicViscosityParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type DynamicViscosityParameter = FlatText
+
+// FittingsParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type FittingsParameter = FlatText
+
+// FrictionDiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type FrictionDiameterParameter = FlatText
+
+// FrictionLawParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type FrictionLawParameter = FlatText
+
+// GapParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type GapParameter = FlatText
+
+// GasModelParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type GasModelParameter = FlatText
+
+// GravityParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type GravityParameter = FlatText
+
+// HeatCapacityRatioParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type HeatCapacityRatioParameter = FlatText
+
+// HeightParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type HeightParameter = FlatText
+
+// IdParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type IdParameter = FlatText
+
+// InletAngleParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletAngleParameter = FlatText
+
+// InletApexOffsetParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletApexOffsetParameter = FlatText
+
+// InletBankLeftParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletBankLeftParameter = FlatText
+
+// InletBankRightParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletBankRightParameter = FlatText
+
+// InletBaseParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletBaseParameter = FlatText
+
+// InletBottomWidthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletBottomWidthParameter = FlatText
+
+// InletCornerRadiusParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletCornerRadiusParameter = FlatText
+
+// InletDiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletDiameterParameter = FlatText
+
+// InletDryEdgesParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletDryEdgesParameter = FlatText
+
+// InletGapParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletGapParameter = FlatText
+
+// InletHeightParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletHeightParameter = FlatText
+
+// InletInnerDiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletInnerDiameterParameter = FlatText
+
+// InletLiningThicknessParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletLiningThicknessParameter = FlatText
+
+// InletLiquidDepthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletLiquidDepthParameter = FlatText
+
+// InletOuterDiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletOuterDiameterParameter = FlatText
+
+// InletOutsideDiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletOutsideDiameterParameter = FlatText
+
+// InletParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletParameter = FlatText
+
+// InletPressureParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletPressureParameter = FlatText
+
+// InletRadiusParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletRadiusParameter = FlatText
+
+// InletScheduleParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletScheduleParameter = FlatText
+
+// InletShapeParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletShapeParameter = FlatText
+
+// InletSideLengthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletSideLengthParameter = FlatText
+
+// InletSidesParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletSidesParameter = FlatText
+
+// InletSizeParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletSizeParameter = FlatText
+
+// InletStandardParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletStandardParameter = FlatText
+
+// InletVerticesParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletVerticesParameter = FlatText
+
+// InletWallThicknessParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletWallThicknessParameter = FlatText
+
+// InletWidthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InletWidthParameter = FlatText
+
+// InnerDiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type InnerDiameterParameter = FlatText
+
+// KinematicViscosityParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type KinematicViscosityParameter = FlatText
+
+// LengthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type LengthParameter = FlatText
+
+// LiningThicknessParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type LiningThicknessParameter = FlatText
+
+// LiquidDepthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type LiquidDepthParameter = FlatText
+
+// LowerCriticalReynoldsParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type LowerCriticalReynoldsParameter = FlatText
+
+// MassFlowParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type MassFlowParameter = FlatText
+
+// MolarMassParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type MolarMassParameter = FlatText
+
+// OnErrorParameter How a refusal is answered.
+//
+// Example: text
+type OnErrorParameter = OnErrorText
+
+// OuterDiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OuterDiameterParameter = FlatText
+
+// OutletAngleParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletAngleParameter = FlatText
+
+// OutletApexOffsetParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletApexOffsetParameter = FlatText
+
+// OutletBankLeftParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletBankLeftParameter = FlatText
+
+// OutletBankRightParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletBankRightParameter = FlatText
+
+// OutletBaseParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletBaseParameter = FlatText
+
+// OutletBottomWidthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletBottomWidthParameter = FlatText
+
+// OutletCornerRadiusParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletCornerRadiusParameter = FlatText
+
+// OutletDiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletDiameterParameter = FlatText
+
+// OutletDryEdgesParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletDryEdgesParameter = FlatText
+
+// OutletGapParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletGapParameter = FlatText
+
+// OutletHeightParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletHeightParameter = FlatText
+
+// OutletInnerDiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletInnerDiameterParameter = FlatText
+
+// OutletLiningThicknessParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletLiningThicknessParameter = FlatText
+
+// OutletLiquidDepthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletLiquidDepthParameter = FlatText
+
+// OutletOuterDiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletOuterDiameterParameter = FlatText
+
+// OutletOutsideDiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletOutsideDiameterParameter = FlatText
+
+// OutletParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletParameter = FlatText
+
+// OutletPressureParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletPressureParameter = FlatText
+
+// OutletRadiusParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletRadiusParameter = FlatText
+
+// OutletScheduleParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletScheduleParameter = FlatText
+
+// OutletShapeParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletShapeParameter = FlatText
+
+// OutletSideLengthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletSideLengthParameter = FlatText
+
+// OutletSidesParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletSidesParameter = FlatText
+
+// OutletSizeParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletSizeParameter = FlatText
+
+// OutletStandardParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletStandardParameter = FlatText
+
+// OutletVerticesParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletVerticesParameter = FlatText
+
+// OutletWallThicknessParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletWallThicknessParameter = FlatText
+
+// OutletWidthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutletWidthParameter = FlatText
+
+// OutsideDiameterParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type OutsideDiameterParameter = FlatText
+
+// PhaseParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type PhaseParameter = FlatText
+
+// PickParameter Name of a leaf of the answer, or fingerprint.
+//
+// Example: static_pressure_drop
+type PickParameter = LeafName
+
+// PressureParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type PressureParameter = FlatText
+
+// RadiusParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type RadiusParameter = FlatText
+
+// ReferencePressureParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type ReferencePressureParameter = FlatText
+
+// ReferenceTemperatureParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type ReferenceTemperatureParameter = FlatText
+
+// ReferenceVolumeFlowParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type ReferenceVolumeFlowParameter = FlatText
+
+// RelativeDensityParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type RelativeDensityParameter = FlatText
+
+// ReportUnitsParameter A system of units, or kinds of quantity with their units.
+//
+// Example: plant
+type ReportUnitsParameter = ReportUnits
+
+// RiseParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type RiseParameter = FlatText
+
+// RoughnessParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type RoughnessParameter = FlatText
+
+// ScheduleParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type ScheduleParameter = FlatText
+
+// ShapeParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type ShapeParameter = FlatText
+
+// SideLengthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type SideLengthParameter = FlatText
+
+// SidesParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type SidesParameter = FlatText
+
+// SizeParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type SizeParameter = FlatText
+
+// StandardParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type StandardParameter = FlatText
+
+// StateParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type StateParameter = FlatText
+
+// SubstanceParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type SubstanceParameter = FlatText
+
+// SurroundingsSubstanceParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type SurroundingsSubstanceParameter = FlatText
+
+// SurroundingsTemperatureParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type SurroundingsTemperatureParameter = FlatText
+
+// TemperatureParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type TemperatureParameter = FlatText
+
+// TitleParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type TitleParameter = FlatText
+
+// UpperCriticalReynoldsParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type UpperCriticalReynoldsParameter = FlatText
+
+// VapourPressureParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type VapourPressureParameter = FlatText
+
+// VelocityParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type VelocityParameter = FlatText
+
+// VerticesParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type VerticesParameter = FlatText
+
+// VolumeFlowParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type VolumeFlowParameter = FlatText
+
+// WallThicknessParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type WallThicknessParameter = FlatText
+
+// WidthParameter A value as a person types it: a number with its unit, a name, or JSON where the field is deep.
+//
+// Example: 150 mm
+type WidthParameter = FlatText
 
 // BodyTooLarge A problem document by RFC 9457, with every violation.
 //

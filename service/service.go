@@ -39,6 +39,7 @@ type Desk struct {
 	service *Service
 	work    work
 	answer  answer.Answer
+	flat    []byte // the document that flat names mean
 }
 
 // Desk returns a desk of the service.
@@ -74,20 +75,29 @@ func New() *Service {
 	return &Service{engine: answer.Engine{Version: Version, MethodRevision: MethodRevision, Platform: runtime.GOOS + "/" + runtime.GOARCH}}
 }
 
-// AnswerJSON reads one JSON request for the door and appends its answer to dst.
-// The error is a *document.Refusal where the request is to blame; anything else
-// is our fault.
+// AnswerJSON is AnswerIn in SI.
 func (s *Service) AnswerJSON(dst, body []byte, door document.Door) ([]byte, error) {
-	d, ok := s.desks.Get().(*Desk)
-	if !ok {
-		d = s.Desk()
-	}
+	return s.AnswerIn(dst, body, door, nil)
+}
+
+// AnswerIn reads one JSON request for the door and appends its answer, in the units
+// of the report, to dst. The error is a *document.Refusal where the request is to
+// blame; anything else is our fault.
+func (s *Service) AnswerIn(dst, body []byte, door document.Door, r *answer.Report) ([]byte, error) {
+	d := s.takeDesk()
 	defer s.desks.Put(d)
 	a, err := d.Answer(body, door, Posted)
 	if err != nil {
 		return dst, err
 	}
-	return answer.AppendJSON(dst, a)
+	return answer.AppendJSON(dst, a, r)
+}
+
+func (s *Service) takeDesk() *Desk {
+	if d, ok := s.desks.Get().(*Desk); ok {
+		return d
+	}
+	return s.Desk()
 }
 
 // Calculate answers a request that has been read.

@@ -6,15 +6,16 @@ import (
 	"strconv"
 
 	"borewright/calc/segment"
+	"borewright/calc/units"
 	"borewright/service/jsontext"
 )
 
 // ErrNotFinite is a number that must never leave the house.
 var ErrNotFinite = errors.New("an answer holds a number that is not finite")
 
-// AppendJSON appends the answer as one JSON object in SI units. Every key of
-// its blocks is there; what has no meaning in the case is null.
-func AppendJSON(dst []byte, a *Answer) ([]byte, error) {
+// AppendJSON appends the answer as one JSON object in the units of the report.
+// Every key of its blocks is there; what has no meaning in the case is null.
+func AppendJSON(dst []byte, a *Answer, r *Report) ([]byte, error) {
 	dst = append(dst, '{')
 	if a.ID != "" {
 		dst = append(jsontext.AppendString(append(dst, `"id":`...), a.ID), ',')
@@ -22,23 +23,25 @@ func AppendJSON(dst []byte, a *Answer) ([]byte, error) {
 	if a.Title != "" {
 		dst = append(jsontext.AppendString(append(dst, `"title":`...), a.Title), ',')
 	}
-	dst, err := appendBlocks(dst, a)
+	dst, err := appendBlocks(dst, a, r)
 	if err != nil {
 		return dst, err
 	}
 	if len(a.Distribution) > 0 {
-		dst = appendDistribution(dst, a.Distribution)
+		if dst, err = appendDistribution(dst, a.Distribution, r); err != nil {
+			return dst, err
+		}
 	}
 	dst = appendNotes(append(dst, `"notes":`...), a.Notes)
 	dst = append(dst, `,"units":`...)
-	dst = append(dst, unitsOf[a.First][a.Last]...)
+	dst = append(dst, r.unitsObject(a.First, a.Last)...)
 	dst = appendEngine(append(dst, `,"engine":`...), a.Engine)
 	dst = append(dst, `,"fingerprint":"`...)
 	dst = hex.AppendEncode(dst, a.Fingerprint[:])
 	return append(dst, '"', '}'), nil
 }
 
-func appendBlocks(dst []byte, a *Answer) ([]byte, error) {
+func appendBlocks(dst []byte, a *Answer, r *Report) ([]byte, error) {
 	open := blocks // no block is open yet
 	for i := range leaves {
 		l := &leaves[i]
@@ -64,13 +67,13 @@ func appendBlocks(dst []byte, a *Answer) ([]byte, error) {
 			continue
 		}
 		v, valid := l.number.value(a)
-		switch {
-		case !valid:
+		if !valid {
 			dst = append(dst, "null"...)
-		case v-v != 0:
-			return dst, ErrNotFinite
-		default:
-			dst = jsontext.AppendNumber(dst, v)
+			continue
+		}
+		var err error
+		if dst, err = r.appendNumber(dst, l.number.Kind, v); err != nil {
+			return dst, err
 		}
 	}
 	return append(dst, '}', ','), nil
@@ -132,31 +135,49 @@ func appendEngine(dst []byte, e Engine) []byte {
 	return append(dst, '}')
 }
 
-// appendDistribution appends the gas along the line, in SI: distance in m, pressure
-// in Pa, temperature in K, velocity in m/s.
-func appendDistribution(dst []byte, points []segment.GasPoint) []byte {
+// appendNumber appends a number of the kind in the unit of the report.
+func (r *Report) appendNumber(dst []byte, kind units.Kind, v float64) ([]byte, error) {
+	v, err := r.In(kind, v)
+	if err != nil || v-v != 0 {
+		return dst, ErrNotFinite
+	}
+	return jsontext.AppendNumber(dst, v), nil
+}
+
+// appendDistribution appends the gas along the line.
+func appendDistribution(dst []byte, points []segment.GasPoint, r *Report) ([]byte, error) {
 	dst = append(dst, `"distribution":[`...)
 	for i := range points {
 		p := &points[i]
 		if i > 0 {
 			dst = append(dst, ',')
 		}
-		dst = jsontext.AppendNumber(append(dst, `{"distance":`...), p.Distance)
-		dst = jsontext.AppendNumber(append(dst, `,"pressure":`...), p.Pressure)
-		dst = jsontext.AppendNumber(append(dst, `,"temperature":`...), p.Temperature)
-		dst = jsontext.AppendNumber(append(dst, `,"velocity":`...), p.Velocity)
-		if p.Mach > 0 {
-			dst = jsontext.AppendNumber(append(dst, `,"mach_number":`...), p.Mach)
-		} else {
-			dst = append(dst, `,"mach_number":null`...)
+		for k, n := range [...]struct {
+			key   string
+			kind  units.Kind
+			value float64
+		}{{`{"distance":`, units.Length, p.Distance}, {`,"pressure":`, units.StatePressure, p.Pressure}, {`,"temperature":`, units.Temperature, p.Temperature},
+			{`,"velocity":`, units.Velocity, p.Velocity}, {`,"mach_number":`, units.Dimensionless, p.Mach}} {
+			dst = append(dst, n.key...)
+			if k == machNumber && n.value == 0 && p.Velocity > 0 { // its heat capacity ratio is not known
+				dst = append(dst, "null"...)
+				continue
+			}
+			var err error
+			if dst, err = r.appendNumber(dst, n.kind, n.value); err != nil {
+				return dst, err
+			}
 		}
 		dst = append(dst, '}')
 	}
-	return append(dst, ']', ',')
+	return append(dst, ']', ','), nil
 }
 
-// unitsOf holds the units object of each run of blocks, which never changes.
-var unitsOf = func() (list [blocks][blocks][]byte) {
+// machNumber is the place of the Mach number in a point.
+const machNumber = 4
+
+// writeObjects writes the units objects, which are the same in every answer.
+func (r *Report) writeObjects() {
 	for first := range blocks {
 		for last := first; last < blocks; last++ {
 			object := []byte{'{'}
@@ -166,10 +187,9 @@ var unitsOf = func() (list [blocks][blocks][]byte) {
 				}
 				object = jsontext.AppendString(object, f.Name)
 				object = append(object, ':')
-				object = jsontext.AppendString(object, f.Kind.SI())
+				object = jsontext.AppendString(object, r.Unit(f.Kind))
 			}
-			list[first][last] = append(object, '}')
+			r.objects[first][last] = append(object, '}')
 		}
 	}
-	return list
-}()
+}

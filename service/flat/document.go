@@ -20,11 +20,11 @@ const (
 	CodeBlank       = "blank"
 )
 
-// AppendDocument appends the request document that the pairs mean, every value as
-// text, for [document.ReadTyped]. What is wrong with the names is told by them; the
+// AppendDocument appends the request document of the door that the pairs mean, every
+// value as text, for [document.ReadTyped]. What is wrong with the names is told by them; the
 // values are the reader's business.
-func AppendDocument(dst []byte, pairs []Pair) ([]byte, []document.Violation) {
-	if wrong := faults(pairs); wrong != nil {
+func AppendDocument(dst []byte, pairs []Pair, door document.Door) ([]byte, []document.Violation) {
+	if wrong := faults(pairs, door); wrong != nil {
 		return dst, wrong
 	}
 	var wrong []document.Violation
@@ -36,8 +36,8 @@ func AppendDocument(dst []byte, pairs []Pair) ([]byte, []document.Violation) {
 	return append(dst, '}'), wrong
 }
 
-// Faults are the unknown, repeated and blank names among the pairs.
-func faults(pairs []Pair) []document.Violation {
+// faults are the unknown, repeated, blank and unused names among the pairs.
+func faults(pairs []Pair, door document.Door) []document.Violation {
 	var wrong []document.Violation
 	refuse := func(name, code, detail string) {
 		wrong = append(wrong, document.Violation{Parameter: name, Code: code, Detail: detail})
@@ -48,6 +48,8 @@ func faults(pairs []Pair) []document.Violation {
 			refuse(p.Name, CodeUnknownName, unknown(p.Name))
 		case repeated(pairs[:i], p.Name):
 			refuse(p.Name, CodeRepeated, p.Name+" stands twice; give it once")
+		case !entries[p.Name].leaf.UsedBy(door):
+			refuse(p.Name, "not_used_here", p.Name+" has no use at this door; leave it out, or ask a larger one")
 		case strings.TrimSpace(p.Text) == "":
 			refuse(p.Name, CodeBlank, "a value is missing for "+p.Name+"; leave the name out, or give one")
 		case !utf8.ValidString(p.Text):

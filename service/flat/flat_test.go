@@ -98,7 +98,7 @@ func TestDocuments(t *testing.T) {
 			`{"fittings":[{"rated_drop":"5 kPa","rated_flow":"20 m3/h","exponent":"1.8","count":"3"},{"loss_coefficient":"-0.1"}]}`},
 		{pairs("fittings", "rated_drop=5 N*m-2, rated_flow=1 m3/s"), `{"fittings":[{"rated_drop":"5 N*m-2","rated_flow":"1 m3/s"}]}`},
 	} {
-		got, wrong := flat.AppendDocument([]byte("before "), c.pairs)
+		got, wrong := flat.AppendDocument([]byte("before "), c.pairs, document.SegmentDoor)
 		if string(got) != "before "+c.want || wrong != nil {
 			t.Errorf("%v\nis   %s, %v\nwant %s", c.pairs, got, wrong, c.want)
 		}
@@ -122,12 +122,12 @@ func TestWrongNamesAreTold(t *testing.T) {
 		{pairs("fittings", "loss_coefficient=;"), "fittings", "blank", "loss_coefficient=1.5"},
 		{pairs("fittings", "loss_coefficient=1;;loss_coefficient=2"), "fittings", "blank", "entry"},
 	} {
-		_, wrong := flat.AppendDocument(nil, c.pairs)
+		_, wrong := flat.AppendDocument(nil, c.pairs, document.SegmentDoor)
 		if len(wrong) != 1 || wrong[0].Parameter != c.name || wrong[0].Code != c.code || !strings.Contains(wrong[0].Detail, c.says) {
 			t.Errorf("%v: %q, wanted %s at %s with %q", c.pairs, wrong, c.code, c.name, c.says)
 		}
 	}
-	_, wrong := flat.AppendDocument(nil, pairs("a", "", "diameter", "", "diameter", "1 m"))
+	_, wrong := flat.AppendDocument(nil, pairs("a", "", "diameter", "", "diameter", "1 m"), document.SegmentDoor)
 	if len(wrong) != 3 {
 		t.Errorf("not all at once: %q", wrong)
 	}
@@ -142,7 +142,7 @@ func FuzzAppendDocument(f *testing.F) {
 	f.Fuzz(func(t *testing.T, n1, v1, n2, v2, n3, v3 string) {
 		list := pairs(n1, v1, n2, v2, n3, v3)
 		list = append(list, flat.Pair{Name: names[len(v1)%len(names)], Text: v3})
-		out, wrong := flat.AppendDocument(nil, list)
+		out, wrong := flat.AppendDocument(nil, list, document.SegmentDoor)
 		if len(wrong) > 0 {
 			for _, w := range wrong {
 				if w.Code == "" || w.Detail == "" || !slices.ContainsFunc(list, func(p flat.Pair) bool { return p.Name == w.Parameter }) {
