@@ -9,31 +9,26 @@ import (
 
 	"borewright/calc"
 	"borewright/service/document"
+	"borewright/service/problem"
 )
 
-// problemKind is one way a request can fail: its stable name, and what a person
-// reads first. The status stands here and nowhere else.
-type problemKind struct {
-	name   string
-	status int
-	title  string
-}
-
+// The ways in which a request can fail. The status of each stands here, or with the
+// service, and nowhere else.
 var (
-	malformedBody     = &problemKind{"malformed_body", http.StatusBadRequest, "The body is not one readable document"}
-	notFound          = &problemKind{"not_found", http.StatusNotFound, "Nothing stands at this path"}
-	methodNotAllowed  = &problemKind{"method_not_allowed", http.StatusMethodNotAllowed, "This path does not take this method"}
-	bodyTooLarge      = &problemKind{"body_too_large", http.StatusRequestEntityTooLarge, "The body is too large"}
-	uriTooLong        = &problemKind{"uri_too_long", http.StatusRequestURITooLong, "The URL is too long"}
-	unsupportedMedia  = &problemKind{"unsupported_media_type", http.StatusUnsupportedMediaType, "The body must be JSON"}
-	invalidInput      = &problemKind{"invalid_input", http.StatusUnprocessableEntity, "The request cannot be answered as it stands"}
-	calculationFailed = &problemKind{"calculation_failed", http.StatusInternalServerError, "The calculation failed"}
-	internal          = &problemKind{"internal", http.StatusInternalServerError, "Something is wrong on our side"}
-	notReady          = &problemKind{"not_ready", http.StatusServiceUnavailable, "Not ready"}
+	malformedBody     = problem.MalformedBody
+	notFound          = &problem.Kind{Name: "not_found", Status: http.StatusNotFound, Title: "Nothing stands at this path"}
+	methodNotAllowed  = &problem.Kind{Name: "method_not_allowed", Status: http.StatusMethodNotAllowed, Title: "This path does not take this method"}
+	bodyTooLarge      = &problem.Kind{Name: "body_too_large", Status: http.StatusRequestEntityTooLarge, Title: "The body is too large"}
+	uriTooLong        = &problem.Kind{Name: "uri_too_long", Status: http.StatusRequestURITooLong, Title: "The URL is too long"}
+	unsupportedMedia  = &problem.Kind{Name: "unsupported_media_type", Status: http.StatusUnsupportedMediaType, Title: "The body must be JSON"}
+	invalidInput      = problem.InvalidInput
+	calculationFailed = problem.CalculationFailed
+	internal          = &problem.Kind{Name: "internal", Status: http.StatusInternalServerError, Title: "Something is wrong on our side"}
+	notReady          = &problem.Kind{Name: "not_ready", Status: http.StatusServiceUnavailable, Title: "Not ready"}
 )
 
 // problemKinds lists every kind; a test provokes each of them.
-var problemKinds = []*problemKind{
+var problemKinds = []*problem.Kind{
 	malformedBody, notFound, methodNotAllowed, bodyTooLarge, uriTooLong, unsupportedMedia, invalidInput, calculationFailed, internal, notReady,
 }
 
@@ -43,12 +38,12 @@ const ourFault = "this is a fault of the service and not of the request; report 
 
 // refusal is a request that the HTTP face itself turns away.
 type refusal struct {
-	kind       *problemKind
+	kind       *problem.Kind
 	detail     string
 	violations []document.Violation
 }
 
-func (r *refusal) Error() string { return r.kind.name + ": " + r.detail }
+func (r *refusal) Error() string { return r.kind.Name + ": " + r.detail }
 
 // explain decides what a client is told about an error: the one place where
 // errors become statuses.

@@ -4,11 +4,11 @@ import (
 	"bytes"
 	"encoding/json"
 	"net/http"
-	"strings"
 
 	"github.com/labstack/echo/v4"
 
 	"borewright/service/document"
+	"borewright/service/problem"
 )
 
 // maxViolations bounds the list of a problem: a body of nonsense would otherwise
@@ -51,7 +51,7 @@ func (a *API) fail(err error, c echo.Context) {
 	case bodyTooLarge:
 		h.Set("Connection", "close")
 	}
-	if err := send(c, r.kind.status, r.document(h.Get(requestIDHeader))); err != nil {
+	if err := send(c, r.kind.Status, r.document(h.Get(requestIDHeader))); err != nil {
 		a.log.Warn("the problem document did not reach its client", "request_id", h.Get(requestIDHeader), "cause", err)
 		return
 	}
@@ -80,7 +80,7 @@ func (a *API) logCause(err error, r *refusal, c echo.Context) {
 
 func (r *refusal) document(requestID string) []byte {
 	d := problemDocument{
-		Type: "/problems/" + r.kind.name, Title: r.kind.title, Status: r.kind.status, Detail: r.detail, RequestID: requestID,
+		Type: r.kind.Type(), Title: r.kind.Title, Status: r.kind.Status, Detail: r.detail, RequestID: requestID,
 	}
 	for _, v := range r.violations[:min(len(r.violations), maxViolations)] {
 		d.Errors = append(d.Errors, newProblemError(v))
@@ -97,26 +97,7 @@ func (r *refusal) document(requestID string) []byte {
 func newProblemError(v document.Violation) problemError {
 	e := problemError{Parameter: v.Parameter, Code: v.Code, Detail: v.Detail}
 	if v.Parameter == "" {
-		e.Pointer = fragment(v.Pointer)
+		e.Pointer = problem.Fragment(v.Pointer)
 	}
 	return e
-}
-
-const (
-	unreserved = "-._~!$&'()*+,;=:@/?" // besides letters and digits: what a fragment may hold as it is (RFC 3986, 3.5)
-	hexDigits  = "0123456789ABCDEF"
-)
-
-// fragment writes a JSON pointer as a URI fragment (RFC 6901, section 6).
-func fragment(pointer string) string {
-	b := append(make([]byte, 0, len(pointer)+1), '#')
-	for i := range len(pointer) {
-		c := pointer[i]
-		if c|0x20 >= 'a' && c|0x20 <= 'z' || c >= '0' && c <= '9' || strings.IndexByte(unreserved, c) >= 0 {
-			b = append(b, c)
-		} else {
-			b = append(b, '%', hexDigits[c>>4], hexDigits[c&15])
-		}
-	}
-	return string(b)
 }

@@ -6,10 +6,12 @@ import (
 	"testing"
 
 	"github.com/labstack/echo/v4"
+
+	"borewright/service/problem"
 )
 
 func TestWrappedRouterErrorsKeepTheirStatus(t *testing.T) {
-	for status, want := range map[int]*problemKind{
+	for status, want := range map[int]*problem.Kind{
 		http.StatusNotFound:         notFound,
 		http.StatusMethodNotAllowed: methodNotAllowed,
 		http.StatusTeapot:           internal, // what we never asked the framework for is ours to answer for
@@ -17,7 +19,7 @@ func TestWrappedRouterErrorsKeepTheirStatus(t *testing.T) {
 		plain := echo.NewHTTPError(status, "a text of the framework")
 		for _, err := range []error{plain, fmt.Errorf("context: %w", plain)} {
 			if got := explain(err); got.kind != want || got.detail == "a text of the framework" {
-				t.Errorf("%v becomes %s %q, want %s", err, got.kind.name, got.detail, want.name)
+				t.Errorf("%v becomes %s %q, want %s", err, got.kind.Name, got.detail, want.Name)
 			}
 		}
 	}
@@ -26,10 +28,10 @@ func TestWrappedRouterErrorsKeepTheirStatus(t *testing.T) {
 func TestProblemKindsAreDistinctAndErrors(t *testing.T) {
 	seen := map[string]bool{}
 	for _, k := range problemKinds {
-		if seen[k.name] || k.status < 400 || k.status > 599 || http.StatusText(k.status) == "" || k.title == "" {
+		if seen[k.Name] || k.Status < 400 || k.Status > 599 || http.StatusText(k.Status) == "" || k.Title == "" {
 			t.Errorf("%+v", *k)
 		}
-		seen[k.name] = true
+		seen[k.Name] = true
 	}
 }
 
@@ -37,7 +39,7 @@ func TestProblemKindsAreDistinctAndErrors(t *testing.T) {
 func KindNames() []string {
 	var names []string
 	for _, k := range problemKinds {
-		names = append(names, k.name)
+		names = append(names, k.Name)
 	}
 	return names
 }

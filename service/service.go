@@ -75,6 +75,12 @@ func New() *Service {
 	return &Service{engine: answer.Engine{Version: Version, MethodRevision: MethodRevision, Platform: runtime.GOOS + "/" + runtime.GOARCH}}
 }
 
+// ID is that of the last request, as far as it could be read.
+func (d *Desk) ID() string { return d.work.req.ID }
+
+// Tags are those of the last request, as far as they could be read.
+func (d *Desk) Tags() []document.Tag { return d.work.req.Tags }
+
 // AnswerJSON is AnswerIn in SI.
 func (s *Service) AnswerJSON(dst, body []byte, door document.Door) ([]byte, error) {
 	return s.AnswerIn(dst, body, door, nil)

@@ -1,0 +1,147 @@
+package batch
+
+import (
+	"context"
+	"errors"
+	"io"
+	"sync"
+
+	"borewright/service"
+	"borewright/service/answer"
+	"borewright/service/document"
+)
+
+// pipeline reads chunks, answers several at once and writes them in their order.
+type pipeline struct {
+	service *service.Service
+	options *Options
+	rows    *answer.Rows
+	pass    []string // names of the carried columns of a CSV
+}
+
+// queued is how many chunks may wait between two stages for each worker: with the
+// size of a chunk it bounds the memory of a batch of any length.
+const queued = 4
+
+func (p *pipeline) run(ctx context.Context, source source, sink *sink) (Summary, error) {
+	ctx, cancel := context.WithCancelCause(ctx)
+	defer cancel(nil)
+	n := workers()
+	work, order := make(chan *chunk, queued*n), make(chan *chunk, 2*queued*n)
+	free := make(chan *chunk, 4*queued*n)
+	var answering sync.WaitGroup
+	for range n {
+		answering.Go(func() {
+			d := p.service.Desk()
+			for c := range work {
+				p.answerChunk(d, c)
+				close(c.done)
+			}
+		})
+	}
+	var readErr error
+	var reading sync.WaitGroup
+	reading.Go(func() {
+		readErr = p.read(ctx, source, work, order, free)
+		close(work)
+		close(order)
+	})
+	summary, err := p.write(ctx, sink, order, free)
+	if err != nil {
+		cancel(err)
+		for range order { // let the reader end
+		}
+	}
+	reading.Wait()
+	answering.Wait()
+	if err == nil {
+		err = readErr
+	}
+	return summary, err
+}
+
+// read fills chunks until the source ends. A chunk goes off as soon as the source
+// would have to wait for more, so that a client who waits for each answer gets it.
+func (p *pipeline) read(ctx context.Context, source source, work, order, free chan *chunk) error {
+	for {
+		c := takeChunk(free)
+		err := fill(c, source)
+		if len(c.requests) > 0 {
+			select {
+			case order <- c:
+			case <-ctx.Done():
+				return context.Cause(ctx)
+			}
+			work <- c
+		}
+		switch {
+		case errors.Is(err, io.EOF):
+			return nil
+		case err != nil:
+			return err
+		case ctx.Err() != nil:
+			return context.Cause(ctx)
+		}
+	}
+}
+
+// fill takes rows until the chunk is full, the source would wait, or it ends.
+func fill(c *chunk, source source) error {
+	for len(c.in) < chunkBytes && len(c.requests) < chunkRows {
+		if err := source.next(c); err != nil {
+			return err
+		}
+		if source.wouldWait() {
+			return nil
+		}
+	}
+	return nil
+}
+
+const (
+	chunkBytes = 16 << 10
+	chunkRows  = 64
+)
+
+func takeChunk(free chan *chunk) *chunk {
+	select {
+	case c := <-free:
+		*c = chunk{requests: c.requests[:0], in: c.in[:0], out: c.out[:0], done: make(chan struct{})}
+		return c
+	default:
+		return &chunk{done: make(chan struct{})}
+	}
+}
+
+// write takes the chunks in the order in which they were read.
+func (p *pipeline) write(ctx context.Context, sink *sink, order, free chan *chunk) (Summary, error) {
+	var s Summary
+	for c := range order {
+		<-c.done
+		s.Total += c.ok + c.failed
+		s.OK += c.ok
+		s.Failed += c.failed
+		if room := maxErrors - len(s.FirstErrors); room > 0 {
+			s.FirstErrors = append(s.FirstErrors, c.errors[:min(room, len(c.errors))]...)
+		}
+		if c.fault != nil {
+			return s, c.fault
+		}
+		if err := sink.write(c.out); err != nil {
+			return s, err
+		}
+		if err := ctx.Err(); err != nil {
+			return s, context.Cause(ctx)
+		}
+		select {
+		case free <- c:
+		default:
+		}
+	}
+	return s, nil
+}
+
+// refusal of the whole batch.
+func refusal(malformed bool, parameter, code, detail string) error {
+	return &document.Refusal{Malformed: malformed, Violations: []document.Violation{{Parameter: parameter, Code: code, Detail: detail}}}
+}
