@@ -24,6 +24,8 @@ type Answerer interface {
 	AnswerIn(dst, body []byte, door document.Door, r *answer.Report) ([]byte, error)
 	// Ask answers one calculation asked by flat names.
 	Ask(dst []byte, q *service.Query) (service.Reply, error)
+	// Desk gives each worker of a batch a desk of its own.
+	Desk() *service.Desk
 	// Convert gives a quantity with its unit in another unit.
 	Convert(quantity, to string) (service.Conversion, error)
 }
@@ -36,7 +38,13 @@ type Options struct {
 	// ValidateAlways lets kin-openapi judge every request that the strict reader
 	// accepted. It costs more than the calculation.
 	ValidateAlways bool
+	// BatchSpool is how many bytes of answers are kept for a client that does not
+	// read them yet; 0 is DefaultBatchSpool.
+	BatchSpool int64
 }
+
+// DefaultBatchSpool holds the answers of some 200,000 rows.
+const DefaultBatchSpool = 512 << 20
 
 // API answers HTTP requests. It is safe for concurrent use.
 type API struct {
@@ -47,6 +55,7 @@ type API struct {
 	ids      *requestIDs
 	state    atomic.Int32
 	document []byte // openapi.json
+	spool    int64
 }
 
 // New wires the routes. It fails only where the OpenAPI document is unusable,
@@ -57,6 +66,9 @@ func New(o Options) (*API, error) {
 		return nil, err
 	}
 	a := &API{service: o.Service, log: o.Logger, ids: newRequestIDs(), document: doc}
+	if a.spool = o.BatchSpool; a.spool == 0 {
+		a.spool = DefaultBatchSpool
+	}
 	if a.log == nil {
 		a.log = slog.New(slog.DiscardHandler)
 	}
@@ -83,6 +95,7 @@ func (a *API) routes() {
 		a.echo.POST(path, a.calculation(door))
 		a.get(path, a.question(door))
 	}
+	a.echo.POST("/v1/segments", a.segments)
 	a.get("/v1/convert", a.convert)
 	a.get("/openapi.json", fixed("application/json", a.document))
 	a.get("/openapi.yaml", fixed("application/yaml", openapi.YAML()))

@@ -123,6 +123,9 @@ func provoke(t *testing.T, o operation, status int) (*api.API, *http.Request) {
 		body = "{"
 	case 413:
 		body = strings.Repeat(" ", 1<<20+1)
+		if o.path == "/v1/segments" {
+			body = strings.Repeat(" ", 64<<20+1)
+		}
 	case 414:
 		target += "?" + strings.Repeat("a", 8<<10)
 	case 415:

@@ -31,6 +31,9 @@ func (a answerer) Ask(dst []byte, q *service.Query) (service.Reply, error) {
 	return service.Reply{Body: body, Text: q.Pick != ""}, err
 }
 
+// Desk is none: a batch over it meets a fault of ours.
+func (a answerer) Desk() *service.Desk { return nil }
+
 func (a answerer) Convert(quantity, to string) (service.Conversion, error) {
 	return a.convert(quantity, to)
 }

@@ -4,8 +4,10 @@ package batch
 
 import (
 	"context"
+	"fmt"
 	"io"
 	"runtime"
+	"runtime/debug"
 	"slices"
 
 	"borewright/service"
@@ -58,9 +60,12 @@ const maxErrors = 100
 // maxRow is how many bytes a row may have.
 const maxRow = 64 << 10
 
+// Desks gives each worker a desk of its own; [service.Service] does.
+type Desks interface{ Desk() *service.Desk }
+
 // Run answers the rows of r into w. Its error is a *document.Refusal where the batch
 // as a whole cannot be read, or what reading and writing met.
-func Run(ctx context.Context, s *service.Service, r io.Reader, w io.Writer, o Options) (Summary, error) {
+func Run(ctx context.Context, s Desks, r io.Reader, w io.Writer, o Options) (Summary, error) {
 	if err := o.check(); err != nil {
 		return Summary{}, err
 	}
@@ -119,15 +124,17 @@ type chunk struct {
 
 // answerChunk answers the rows of a chunk one after the other.
 func (p *pipeline) answerChunk(d *service.Desk, c *chunk) {
-	for i := range c.requests {
-		if err := p.answerRow(d, c, &c.requests[i]); err != nil {
-			c.fault = err
-			return
+	defer func() {
+		if v := recover(); v != nil { // one row must not take the process with it
+			c.fault = fmt.Errorf("panic in a batch: %v\n%s", v, debug.Stack())
 		}
+	}()
+	for i := range c.requests {
+		p.answerRow(d, c, &c.requests[i])
 	}
 }
 
-func (p *pipeline) answerRow(d *service.Desk, c *chunk, r *request) error {
+func (p *pipeline) answerRow(d *service.Desk, c *chunk, r *request) {
 	kind, violations := problem.InvalidInput, r.wrong
 	row := answer.Row{Number: r.number, ID: r.id, Carried: r.carried}
 	if r.tooLarge {
@@ -151,7 +158,7 @@ func (p *pipeline) answerRow(d *service.Desk, c *chunk, r *request) error {
 			mark := len(c.out)
 			if c.out, err = p.appendAnswer(c.out, &row, a); err == nil {
 				c.ok++
-				return nil
+				return
 			}
 			c.out = c.out[:mark]
 		}
@@ -166,5 +173,16 @@ func (p *pipeline) answerRow(d *service.Desk, c *chunk, r *request) error {
 			c.errors = append(c.errors, inBatch(v, r.number))
 		}
 	}
-	return nil
+}
+
+// LastRow is what a stream ends with when its spool is full.
+func LastRow(o Options, s Summary) []byte {
+	p := pipeline{options: &o, rows: rowsOf(&o)}
+	detail := "the client has not read its answers and no more can be kept for it; read while sending, or send fewer rows at a time"
+	row := answer.Row{Number: s.Total + 1}
+	if o.Out == CSV {
+		p.pass = make([]string, len(o.Carry))
+		row.Carried = p.pad(nil)
+	}
+	return p.appendFailed(nil, &row, problem.SpoolFull, []document.Violation{{Code: problem.SpoolFull.Name, Detail: detail}})
 }

@@ -6,14 +6,13 @@ import (
 	"io"
 	"sync"
 
-	"borewright/service"
 	"borewright/service/answer"
 	"borewright/service/document"
 )
 
 // pipeline reads chunks, answers several at once and writes them in their order.
 type pipeline struct {
-	service *service.Service
+	service Desks
 	options *Options
 	rows    *answer.Rows
 	pass    []string // names of the carried columns of a CSV
@@ -118,17 +117,17 @@ func (p *pipeline) write(ctx context.Context, sink *sink, order, free chan *chun
 	var s Summary
 	for c := range order {
 		<-c.done
-		s.Total += c.ok + c.failed
-		s.OK += c.ok
-		s.Failed += c.failed
-		if room := maxErrors - len(s.FirstErrors); room > 0 {
-			s.FirstErrors = append(s.FirstErrors, c.errors[:min(room, len(c.errors))]...)
-		}
 		if c.fault != nil {
 			return s, c.fault
 		}
 		if err := sink.write(c.out); err != nil {
 			return s, err
+		}
+		s.Total += c.ok + c.failed
+		s.OK += c.ok
+		s.Failed += c.failed
+		if room := maxErrors - len(s.FirstErrors); room > 0 {
+			s.FirstErrors = append(s.FirstErrors, c.errors[:min(room, len(c.errors))]...)
 		}
 		if err := ctx.Err(); err != nil {
 			return s, context.Cause(ctx)

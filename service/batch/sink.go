@@ -21,15 +21,19 @@ type sink struct {
 }
 
 func newSink(w io.Writer, o *Options, in source) *sink {
-	rows := &answer.Rows{Report: o.Report, Comma: o.Dialect.Comma, DecimalComma: o.Dialect.DecimalComma}
-	if rows.Comma == 0 {
-		rows.Comma = ','
-	}
 	pass := in.carried()
 	if o.In != CSV {
 		pass = o.Carry
 	}
-	return &sink{out: w, options: o, rows: rows, pass: pass}
+	return &sink{out: w, options: o, rows: rowsOf(o), pass: pass}
+}
+
+func rowsOf(o *Options) *answer.Rows {
+	rows := &answer.Rows{Report: o.Report, Comma: o.Dialect.Comma, DecimalComma: o.Dialect.DecimalComma}
+	if rows.Comma == 0 {
+		rows.Comma = ','
+	}
+	return rows
 }
 
 func (s *sink) put(b []byte) error {

@@ -100,8 +100,10 @@ func newArray(r io.Reader, most int64) (source, error) {
 		if err := json.Unmarshal(body, &a.rows); err != nil {
 			return nil, refusal(true, "", "malformed_body", "the array is no JSON: "+err.Error())
 		}
+	case trimmed[0] == '{' && json.Valid(body):
+		a.rows = []json.RawMessage{body}
 	case trimmed[0] == '{':
-		a.rows = []json.RawMessage{body} // the reader judges it
+		return nil, refusal(true, "", "malformed_body", "the document is no JSON; a lone object is a batch of one, many are an array, or lines sent as application/x-ndjson")
 	default:
 		return nil, refusal(false, "", "wrong_type", "a batch is a JSON array of request documents, or one document alone")
 	}

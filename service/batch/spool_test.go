@@ -1,0 +1,94 @@
+package batch_test
+
+import (
+	"bytes"
+	"errors"
+	"io"
+	"math/rand/v2"
+	"testing"
+
+	"borewright/service/batch"
+)
+
+// Whatever is written in whatever pieces comes out in order, whether the reader
+// keeps up or not.
+func TestSpoolKeepsTheOrder(t *testing.T) {
+	r := rand.New(rand.NewPCG(1, 2))
+	for _, late := range []bool{false, true} {
+		s := batch.NewSpool(64 << 20)
+		want := make([]byte, 20<<20)
+		for i := range want {
+			want[i] = byte(i*7 + i>>11)
+		}
+		written := make(chan error, 1)
+		write := func() {
+			rest := want
+			for len(rest) > 0 {
+				n := min(len(rest), 1+r.IntN(300<<10))
+				if _, err := s.Write(rest[:n]); err != nil {
+					written <- err
+					return
+				}
+				rest = rest[n:]
+			}
+			s.End(nil)
+			written <- nil
+		}
+		if late {
+			write()
+		} else {
+			go write()
+		}
+		var got bytes.Buffer
+		buffer := make([]byte, 64<<10)
+		for {
+			part, err := s.Next(buffer)
+			if errors.Is(err, io.EOF) {
+				break
+			}
+			if err != nil {
+				t.Fatal(err)
+			}
+			got.Write(part)
+		}
+		if err := <-written; err != nil {
+			t.Fatal(err)
+		}
+		if !bytes.Equal(got.Bytes(), want) {
+			t.Errorf("late %v: %d bytes of %d, or another order", late, got.Len(), len(want))
+		}
+		if err := s.Close(); err != nil {
+			t.Error(err)
+		}
+	}
+}
+
+func TestSpoolHasABound(t *testing.T) {
+	s := batch.NewSpool(1000)
+	if _, err := s.Write(make([]byte, 900)); err != nil {
+		t.Fatal(err)
+	}
+	if _, err := s.Write(make([]byte, 200)); !errors.Is(err, batch.ErrSpoolFull) {
+		t.Errorf("%v", err)
+	}
+	if _, err := s.Next(make([]byte, 100)); err != nil {
+		t.Fatal(err)
+	}
+	if _, err := s.Write(make([]byte, 5000)); err != nil {
+		t.Errorf("an empty spool takes one piece of any size: %v", err)
+	}
+	failed := errors.New("failed")
+	s.End(failed)
+	if _, err := s.Next(nil); err != nil {
+		t.Fatal(err)
+	}
+	if _, err := s.Next(nil); !errors.Is(err, failed) {
+		t.Errorf("%v", err)
+	}
+	if err := s.Close(); err != nil {
+		t.Error(err)
+	}
+	if _, err := s.Write([]byte{1}); err == nil {
+		t.Error("a closed spool takes more")
+	}
+}
