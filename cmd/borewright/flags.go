@@ -33,6 +33,32 @@ func parseFlags(p *process, fs *flag.FlagSet, args []string) error {
 	return readEnvironment(p, fs)
 }
 
+// parseFileFlags is parseFlags for a command that also takes one file, before or
+// behind its flags.
+func parseFileFlags(p *process, fs *flag.FlagSet, args []string) (string, error) {
+	fs.SetOutput(io.Discard)
+	file := ""
+	for {
+		if err := fs.Parse(args); errors.Is(err, flag.ErrHelp) {
+			printFlags(p, fs)
+			return "", errHelp
+		} else if err != nil {
+			return "", err
+		}
+		if fs.NArg() == 0 {
+			break
+		}
+		if file != "" {
+			return "", fmt.Errorf("unexpected argument %q", fs.Arg(0))
+		}
+		file, args = fs.Arg(0), fs.Args()[1:]
+	}
+	if file == "" {
+		return "", errors.New("name the file to read, or - for standard input")
+	}
+	return file, readEnvironment(p, fs)
+}
+
 func readEnvironment(p *process, fs *flag.FlagSet) error {
 	given := map[string]bool{}
 	fs.Visit(func(f *flag.Flag) { given[f.Name] = true })

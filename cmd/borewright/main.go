@@ -20,7 +20,9 @@ const (
 
 // process is what a command has of the world.
 type process struct {
+	stdin          io.Reader
 	stdout, stderr io.Writer
+	terminal       bool // a person reads stdout
 	getenv         func(string) string
 	signals        <-chan os.Signal
 }
@@ -35,6 +37,8 @@ type command struct {
 func commands() []command {
 	return []command{
 		{"serve", "answer requests over HTTP", serve},
+		{"calc", "answer a request document, NDJSON or CSV without a server", calculate},
+		{"healthcheck", "ask a server on this machine whether it is ready", healthcheck},
 		{"version", "print the version", printVersion},
 		{"help", "print this help", printHelp},
 	}
@@ -44,8 +48,14 @@ func main() {
 	// Two places: a second signal must be seen while the first is being served.
 	signals := make(chan os.Signal, 2)
 	signal.Notify(signals, os.Interrupt, syscall.SIGTERM)
-	p := &process{stdout: os.Stdout, stderr: os.Stderr, getenv: os.Getenv, signals: signals}
+	p := &process{stdin: os.Stdin, stdout: os.Stdout, stderr: os.Stderr, terminal: isTerminal(os.Stdout), getenv: os.Getenv, signals: signals}
 	os.Exit(dispatch(p, os.Args[1:]))
+}
+
+// isTerminal reports whether a file is one that people look at.
+func isTerminal(f *os.File) bool {
+	info, err := f.Stat()
+	return err == nil && info.Mode()&os.ModeCharDevice != 0
 }
 
 func dispatch(p *process, args []string) int {

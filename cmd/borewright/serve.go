@@ -21,9 +21,13 @@ type serveFlags struct {
 	listen        string
 	auth          choice
 	validate      choice
+	batchSpool    int64
 	shutdownGrace time.Duration
 	drainDelay    time.Duration
 }
+
+// defaultListen is where serve listens unless told otherwise.
+const defaultListen = "127.0.0.1:8080"
 
 func readServeFlags(p *process, args []string) (*serveFlags, error) {
 	f := &serveFlags{
@@ -31,13 +35,17 @@ func readServeFlags(p *process, args []string) (*serveFlags, error) {
 		validate: choice{"never", []string{"never", "always"}},
 	}
 	fs := flag.NewFlagSet("serve", flag.ContinueOnError)
-	fs.StringVar(&f.listen, "listen", "127.0.0.1:8080", "address to listen on, host:port; port 0 takes a free one")
+	fs.StringVar(&f.listen, "listen", defaultListen, "address to listen on, host:port; port 0 takes a free one")
 	fs.Var(&f.auth, "auth", "off: answer whoever reaches the address. Must be said when the address is not loopback")
 	fs.Var(&f.validate, "validate", "never or always: let the OpenAPI validator judge every request beside the strict reader")
+	fs.Int64Var(&f.batchSpool, "batch-spool", api.DefaultBatchSpool, "bytes of answers kept for each client of a batch that does not read them yet, in a temporary file")
 	fs.DurationVar(&f.shutdownGrace, "shutdown-grace", 15*time.Second, "how long requests may still run after the drain delay")
 	fs.DurationVar(&f.drainDelay, "drain-delay", 500*time.Millisecond, "how long to answer on after a stop signal, not ready any more, so that a load balancer can look elsewhere")
 	if err := parseFlags(p, fs, args); err != nil {
 		return nil, err
+	}
+	if f.batchSpool < 1<<20 {
+		return nil, errors.New("--batch-spool must be at least 1048576 bytes")
 	}
 	if f.shutdownGrace <= 0 || f.drainDelay < 0 {
 		return nil, errors.New("--shutdown-grace must be positive, --drain-delay must not be negative")
@@ -59,7 +67,7 @@ func serve(p *process, args []string) int {
 		return p.usage("serve: %v", err)
 	}
 	log := slog.New(slog.NewJSONHandler(p.stderr, nil))
-	face, err := api.New(api.Options{Service: service.New(), Logger: log, ValidateAlways: f.validate.value == "always"})
+	face, err := api.New(api.Options{Service: service.New(), Logger: log, ValidateAlways: f.validate.value == "always", BatchSpool: f.batchSpool})
 	if err != nil {
 		return p.fault("serve: %v", err)
 	}
