@@ -123,11 +123,14 @@ func (w *work) gas(out *answer.Answer) {
 		return
 	}
 	n := answer.Note{Code: "gas_taken_incompressible", Level: answer.Info,
-		Text: "The gas is taken as incompressible; this holds while the drop stays below 10 % of the absolute pressure."}
-	p := &r.Pressure
-	if p.InletPressure.Valid && p.StaticPressureDrop.Value > segment.GasDropNoted*p.InletPressure.Value {
+		Text: "A gas known by its density alone is taken as incompressible; this holds while the drop stays below 10 % of the absolute pressure."}
+	if p := &r.Pressure; p.InletPressure.Valid {
+		part := p.StaticPressureDrop.Value / p.InletPressure.Value
+		if part <= segment.GasDropNoted {
+			return // as it should be
+		}
 		n.Level = answer.Caution
-		n.Text = fmt.Sprintf("The gas loses %.3g %% of its absolute pressure and is taken as incompressible; above 10 %% that is doubtful.", 100*p.StaticPressureDrop.Value/p.InletPressure.Value)
+		n.Text = fmt.Sprintf("The gas loses %.3g %% of its absolute pressure and is taken as incompressible; above 10 %% that is doubtful.", 100*part)
 	}
 	out.Notes = append(out.Notes, n)
 }

@@ -74,7 +74,7 @@ func (w *Rows) AppendFailedTable(dst []byte, row *Row, k *problem.Kind, violatio
 		dst = append(append(append(append(append(append(append(dst, noteStart), "problem "...), v.Code...), " at "...), at...), ": "...), v.Detail...)
 	}
 	if len(violations) == 0 {
-		dst = append(append(dst, noteStart), k.Title...)
+		dst = append(append(append(dst, noteStart), "problem "...), k.Title...)
 	}
 	return append(dst, rowEnd)
 }
@@ -112,7 +112,13 @@ func Rounded(v float64, figures int) string {
 // TableText is a table for people: aligned, units in its head, notes under it.
 type TableText struct {
 	rows  [][]string
-	notes []string
+	notes []tableNote
+}
+
+// tableNote is a note with the segments that earn it.
+type tableNote struct {
+	text string
+	of   []string
 }
 
 // Add takes rows as [Rows.AppendTable] wrote them.
@@ -126,9 +132,55 @@ func (t *TableText) Add(b []byte) {
 			name = cells[1]
 		}
 		for _, n := range parts[1:] {
-			t.notes = append(t.notes, name+": "+clean(n))
+			t.note(clean(n), name)
 		}
 	}
+}
+
+func (t *TableText) note(text, name string) {
+	for i := range t.notes {
+		if t.notes[i].text == text {
+			t.notes[i].of = append(t.notes[i].of, name)
+			return
+		}
+	}
+	t.notes = append(t.notes, tableNote{text, []string{name}})
+}
+
+// noteOrder is what a person must see first.
+var noteOrder = []string{"problem", Limit.String(), Caution.String(), Info.String()}
+
+// writeNotes writes each note once, with the segments that earn it.
+func (t *TableText) writeNotes(b *strings.Builder) {
+	for _, level := range noteOrder {
+		for _, n := range t.notes {
+			if strings.HasPrefix(n.text, level+" ") {
+				fmt.Fprintf(b, "\n%s\n", n.text)
+				writeNames(b, n.of)
+			}
+		}
+	}
+}
+
+// lineWidth is where a list of names goes on in the next line.
+const lineWidth = 100
+
+func writeNames(b *strings.Builder, names []string) {
+	width := 0
+	for i, name := range names {
+		switch {
+		case i == 0:
+			b.WriteString("    ")
+		case width+len(name) > lineWidth:
+			b.WriteString(",\n    ")
+			width = 0
+		default:
+			b.WriteString(", ")
+		}
+		b.WriteString(name)
+		width += len(name) + 2
+	}
+	b.WriteByte('\n')
 }
 
 // tableCaution stands under every table: it is read by people who act on it.
@@ -173,9 +225,7 @@ func (t *TableText) Write(w io.Writer, r *Report) error {
 			b.WriteByte('\n')
 		}
 	}
-	if len(t.notes) > 0 {
-		b.WriteString("\n" + strings.Join(t.notes, "\n") + "\n")
-	}
+	t.writeNotes(&b)
 	b.WriteString("\n" + tableCaution + "\n")
 	_, err := io.WriteString(w, b.String())
 	return err
