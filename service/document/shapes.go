@@ -175,7 +175,7 @@ func (d *decoder) sectionText(at int32, s *Section) bool {
 func (d *decoder) unknownDimension(at int32, s *Section) {
 	name := d.key(at)
 	if name == "liquid_depth" {
-		d.structure(at, "unknown_field", "a "+s.Spec.Name+" is offered flowing full only; circle, pipe, rectangle, ellipse, triangle, trapezoid and polygon take a liquid_depth")
+		d.structure(at, "unknown_field", article(s.Spec.Name)+" is offered flowing full only; circle, pipe, rectangle, ellipse, triangle, trapezoid and polygon take a liquid_depth")
 		return
 	}
 	names := []string{"shape"}
@@ -186,13 +186,21 @@ func (d *decoder) unknownDimension(at int32, s *Section) {
 	if s.Spec.Depth {
 		names = append(names, "liquid_depth")
 	}
-	detail := quoted(name) + " is no dimension of a " + s.Spec.Name
+	detail := quoted(name) + " is no dimension of " + article(s.Spec.Name)
 	if offer := nearest(name, names); offer != "" {
 		detail += "; did you mean " + offer + "?"
 	} else {
 		detail += ", which takes " + strings.Join(names, ", ")
 	}
 	d.structure(at, "unknown_field", detail)
+}
+
+// article puts the indefinite one before the name of a shape.
+func article(name string) string {
+	if strings.IndexByte("aeiou", name[0]) >= 0 {
+		return "an " + name
+	}
+	return "a " + name
 }
 
 // schedule is a name, or a number as people write it.
