@@ -26,6 +26,8 @@ type Answerer interface {
 	Ask(dst []byte, q *service.Query) (service.Reply, error)
 	// Desk gives each worker of a batch a desk of its own.
 	Desk() *service.Desk
+	// Catalog lists what a request can name.
+	Catalog(kind string) ([]service.CatalogEntry, bool)
 	// Convert gives a quantity with its unit in another unit.
 	Convert(quantity, to string) (service.Conversion, error)
 }
@@ -96,6 +98,8 @@ func (a *API) routes() {
 		a.get(path, a.question(door))
 	}
 	a.echo.POST("/v1/segments", a.segments)
+	a.get("/v1/catalog", a.catalog)
+	a.get("/v1/catalog/:kind", a.catalog)
 	a.get("/v1/convert", a.convert)
 	a.get("/openapi.json", fixed("application/json", a.document))
 	a.get("/openapi.yaml", fixed("application/yaml", openapi.YAML()))

@@ -92,6 +92,9 @@ func (o operation) bodies(t testing.TB) map[string]string {
 // target is the path with the example of its query, or the examples of its query
 // parameters where they can stand together.
 func (o operation) target() string {
+	if o.path == "/v1/catalog/{kind}" {
+		return "/v1/catalog/substances"
+	}
 	if whole, ok := o.Extensions["x-example-query"].(string); ok {
 		return o.path + "?" + whole
 	}
@@ -121,6 +124,8 @@ func provoke(t *testing.T, o operation, status int) (*api.API, *http.Request) {
 	case 304:
 	case 400:
 		body = "{"
+	case 404:
+		target = "/v1/catalog/nothing"
 	case 413:
 		body = strings.Repeat(" ", 1<<20+1)
 		if o.path == "/v1/segments" {
@@ -131,7 +136,8 @@ func provoke(t *testing.T, o operation, status int) (*api.API, *http.Request) {
 	case 415:
 		media = "text/plain"
 	case 422:
-		target = o.path + "?no_such_name=1"
+		target, _, _ = strings.Cut(target, "?")
+		target += "?no_such_name=1"
 	case 500:
 		face, _ = newFace(t, failing(errors.New("provoked")))
 	case 503:
@@ -190,6 +196,7 @@ func TestEveryRouteIsDocumented(t *testing.T) {
 	}
 	face, _ := newFace(t, service.New())
 	for _, route := range face.Routes() {
+		route = strings.Replace(route, ":kind", "{kind}", 1)
 		if strings.HasPrefix(route, "HEAD ") {
 			continue // HEAD is GET without a body, and every GET has it
 		}

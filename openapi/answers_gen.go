@@ -129,6 +129,33 @@ func (e CSVDialect) Valid() bool {
 	}
 }
 
+// Defines values for CatalogKindName.
+const (
+	CatalogKindNameFrictionLaws  CatalogKindName = "friction_laws"
+	CatalogKindNamePipeStandards CatalogKindName = "pipe_standards"
+	CatalogKindNameShapes        CatalogKindName = "shapes"
+	CatalogKindNameSubstances    CatalogKindName = "substances"
+	CatalogKindNameUnits         CatalogKindName = "units"
+)
+
+// Valid indicates whether the value is a known member of the CatalogKindName enum.
+func (e CatalogKindName) Valid() bool {
+	switch e {
+	case CatalogKindNameFrictionLaws:
+		return true
+	case CatalogKindNamePipeStandards:
+		return true
+	case CatalogKindNameShapes:
+		return true
+	case CatalogKindNameSubstances:
+		return true
+	case CatalogKindNameUnits:
+		return true
+	default:
+		return false
+	}
+}
+
 // Defines values for FlowRegime.
 const (
 	FlowRegimeAtRest       FlowRegime = "at_rest"
@@ -934,6 +961,81 @@ type CarriedNames = string
 //
 // Example: P-3
 type CarriedText = string
+
+// Catalog A list of the catalogue.
+//
+// Example: {"entries":[{"how_checked":"the verification values of the release","name":"water","source":"IAPWS R7-97(2012)","title":"Water and steam","valid_range":"273.15 K to 1073.15 K, up to 100 MPa"}]}
+type Catalog struct {
+	// Entries The entries of a list.
+	//
+	// Example: [{"how_checked":"the verification values of the release","name":"water","source":"IAPWS R7-97(2012)","title":"Water and steam","valid_range":"273.15 K to 1073.15 K, up to 100 MPa"}]
+	Entries CatalogEntries `json:"entries"`
+}
+
+// CatalogEntries The entries of a list.
+//
+// Example: [{"how_checked":"the verification values of the release","name":"water","source":"IAPWS R7-97(2012)","title":"Water and steam","valid_range":"273.15 K to 1073.15 K, up to 100 MPa"}]
+type CatalogEntries = []CatalogEntry
+
+// CatalogEntry One thing that a request can name, with where it comes from.
+//
+// Example: {"how_checked":"the verification values of the release","name":"water","source":"IAPWS R7-97(2012)","title":"Water and steam","valid_range":"273.15 K to 1073.15 K, up to 100 MPa"}
+type CatalogEntry struct {
+	// Dimensions Other names, or names of dimensions.
+	//
+	// Example: ["width","height"]
+	Dimensions *CatalogTexts `json:"dimensions,omitempty"`
+
+	// HowChecked A line of text.
+	//
+	// Example: water
+	HowChecked CatalogText `json:"how_checked"`
+
+	// Name A line of text.
+	//
+	// Example: water
+	Name CatalogText `json:"name"`
+
+	// Names Other names, or names of dimensions.
+	//
+	// Example: ["width","height"]
+	Names *CatalogTexts `json:"names,omitempty"`
+
+	// Source A line of text.
+	//
+	// Example: water
+	Source CatalogText `json:"source"`
+
+	// Title A line of text.
+	//
+	// Example: water
+	Title CatalogText `json:"title"`
+
+	// Unit A line of text.
+	//
+	// Example: water
+	Unit *CatalogText `json:"unit,omitempty"`
+
+	// ValidRange A line of text.
+	//
+	// Example: water
+	ValidRange CatalogText `json:"valid_range"`
+}
+
+// CatalogKindName Name of a list of the catalogue.
+//
+// Example: substances
+type CatalogKindName string
+
+// CatalogText A line of text.
+//
+// Example: water
+type CatalogText = string
+
+// CatalogTexts Other names, or names of dimensions.
+//
+// Example: ["width","height"]
+type CatalogTexts = []CatalogText
 
 // Code A stable code.
 //
@@ -2202,6 +2304,11 @@ type InvalidInput = ProblemDocument
 //
 // Example: {"detail":"The body is larger than 1 MiB.","request_id":"b7Fq2-000041","status":413,"title":"The body is too large","type":"/problems/body_too_large"}
 type MalformedBody = ProblemDocument
+
+// NotFound A problem document by RFC 9457, with every violation.
+//
+// Example: {"detail":"The body is larger than 1 MiB.","request_id":"b7Fq2-000041","status":413,"title":"The body is too large","type":"/problems/body_too_large"}
+type NotFound = ProblemDocument
 
 // NotReady A problem document by RFC 9457, with every violation.
 //

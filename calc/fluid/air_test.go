@@ -27,6 +27,26 @@ func TestAirAgainstReferenceValues(t *testing.T) {
 	viscosity.within(t, 1e-14)
 }
 
+// The check values that the viscosity paper prints for air, to six digits.
+func TestAirAgainstThePublishedViscosities(t *testing.T) {
+	seen := 0
+	for _, row := range table(t, "lemmon_jacobsen.csv") {
+		if row["fluid"] != "air" {
+			continue
+		}
+		seen++
+		var printed, formula worst
+		got := fluid.AirViscosity(number(t, row, "temperature_K"), 1e3*number(t, row, "density_mol_L"))
+		printed.see(got, number(t, row, "published_viscosity_Pa_s"), row["temperature_K"])
+		printed.within(t, 5e-6)
+		formula.see(got, number(t, row, "formula_viscosity_Pa_s"), row["temperature_K"])
+		formula.within(t, 1e-11)
+	}
+	if seen < 2 {
+		t.Errorf("%d rows of air", seen)
+	}
+}
+
 // Sound speed of dry air at 0 degC and 101325 Pa: 331.45 m/s. Source: Cramer
 // 1993, J. Acoust. Soc. Am. 93, 2510 (331.46 m/s, from memory).
 func TestAirSoundSpeed(t *testing.T) {

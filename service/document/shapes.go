@@ -81,6 +81,9 @@ var shapes = []ShapeSpec{
 // Shapes lists the shapes by name, for the tests that compare them with the document.
 func Shapes() []ShapeSpec { return slices.Clone(shapes) }
 
+// TextsOf lists the members of a shape that are no numbers.
+func TextsOf(shape string) []string { return slices.Clone(texts[shape]) }
+
 var shapeNames = func() (names []string) {
 	for i := range shapes {
 		names = append(names, shapes[i].Name)
