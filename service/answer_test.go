@@ -202,6 +202,9 @@ func TestUnitsAreThoseOfTheDocument(t *testing.T) {
 // TestSmallerDoorsAnswerTheSameDigits compares the very text of the numbers.
 func TestSmallerDoorsAnswerTheSameDigits(t *testing.T) {
 	for name, request := range cases() {
+		if request["answer_at_choking"] == true {
+			continue // only a segment knows that its flow is not the one that was asked for
+		}
 		whole, err := service.New().AnswerJSON(nil, written(t, request), document.SegmentDoor)
 		if err != nil {
 			t.Fatal(err)

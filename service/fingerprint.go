@@ -116,8 +116,18 @@ func (w *work) fluidInputs(c *canonical) {
 	c.number(float64(r.Saturated))
 	c.optional(f.Temperature)
 	c.optional(f.Pressure)
-	if r.Way == document.BySubstance {
+	switch r.Way {
+	case document.BySubstance:
+		c.number(w.saturatedAt)
 		return
+	case document.ByConstants:
+		c.optional(given(r.MolarMass))
+		c.optional(given(r.RelativeDensity))
+		z := 1.0
+		if r.CompressibilityFactor.Given {
+			z = r.CompressibilityFactor.Value
+		}
+		c.number(z)
 	}
 	c.number(f.Density)
 	c.number(f.DynamicViscosity)

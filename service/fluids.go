@@ -66,6 +66,7 @@ func (w *work) saturated(f *document.Fluid) (fluid.Properties, error) {
 		if !pressure.Valid {
 			return fluid.Properties{}, nil
 		}
+		w.saturatedAt = pressure.Value
 		var err error
 		if temperature, err = fluid.WaterSaturationTemperature(pressure.Value); err != nil {
 			return fluid.Properties{}, err

@@ -65,6 +65,7 @@ var refusalCases = []refusalCase{
 	{"a gas that loses too much", "/flow", "outside_validity", "40 %", with(air(), object{"inlet_pressure": 400})},
 
 	{"a gas that chokes", "/flow", "choked", "at most", with(nitrogen(), object{"flow": object{"mass_flow": 60}})},
+	{"a gas that gains by its fittings", "/fittings", "outside_domain", "take pressure", with(nitrogen(), object{"fittings": []any{object{"loss_coefficient": -900}}})},
 	{"a gas model of a liquid", "/gas_model", "outside_domain", "leave", with(quiet(), object{"gas_model": "adiabatic"})},
 	{"an adiabatic gas known by density", "/gas_model", "outside_domain", "state", with(air(), object{"gas_model": "adiabatic"})},
 	{"an adiabatic gas without its ratio", "/fluid/heat_capacity_ratio", "outside_domain", "1.4", with(nitrogen(), object{"fluid/heat_capacity_ratio": nil, "gas_model": "adiabatic"})},

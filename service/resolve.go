@@ -29,9 +29,12 @@ type work struct {
 	violations []document.Violation
 	atmosphere float64
 	reference  fluid.StatePoint // of a reference volume flow
-	gaugeUsed  bool
-	canonical  []byte
-	defaults   []byte
+	// saturatedAt is the pressure [Pa] that a saturated state was given by; its
+	// temperature forgets the last digits.
+	saturatedAt float64
+	gaugeUsed   bool
+	canonical   []byte
+	defaults    []byte
 }
 
 // refuse notes what is wrong and lets the work go on, so that everything is found.
@@ -52,7 +55,7 @@ func (w *work) resolve() error {
 	r := &w.req
 	w.violations = w.violations[:0]
 	w.in = segment.Input{Gravity: segment.StandardGravity, Law: r.Law, DiameterRule: r.DiameterRule}
-	w.reference, w.atmosphere, w.gaugeUsed = fluid.StatePoint{}, standardAtmosphere, false
+	w.reference, w.saturatedAt, w.atmosphere, w.gaugeUsed = fluid.StatePoint{}, 0, standardAtmosphere, false
 	if r.Door == document.FluidDoor {
 		w.site()
 		w.fluid()
@@ -239,7 +242,7 @@ var blocksOf = map[string]string{
 // resultsAt says which part of a request a refused result points at.
 var resultsAt = map[string]string{
 	"laminar_constant": "/section", "flow_area": "/section", "hydraulic_diameter": "/section", "shape": "/section/shape",
-	"flow": "/flow", "reynolds": "/flow", "relative_roughness": "/roughness", "static_pressure_drop": "/flow",
+	"flow": "/flow", "reynolds": "/flow", "loss_coefficient": "/fittings", "relative_roughness": "/roughness", "static_pressure_drop": "/flow",
 }
 
 // place is the pointer of an error: the field it names, in the block where that

@@ -177,7 +177,10 @@ func (out *Result) gasLine(in *Input, model GasModel) error {
 	out.Pressure.GasModel = model
 	out.Conditions.GasRiseWithoutSurroundings = in.Rise.Value != 0 && !in.SurroundingsDensity.Valid
 	if out.Conditions.AtRest {
-		drops := out.gasAtRest(in)
+		drops, err := out.gasAtRest(in)
+		if err != nil {
+			return err
+		}
 		out.gasAccount(in, &drops)
 		return out.finite()
 	}
@@ -268,12 +271,20 @@ func sharedDrop(p *Pressure, fittings float64) (coefficients, components float64
 	return coefficients, fittings - coefficients
 }
 
+// highest is the height of a column of gas over the height in which its pressure
+// falls by e: beyond, there is no gas left at one end.
+const highest = 500
+
 // gasAtRest is a column of gas at one temperature.
-func (out *Result) gasAtRest(in *Input) gasDrops {
+func (out *Result) gasAtRest(in *Input) (gasDrops, error) {
 	f := &in.Fluid
 	g := gas.Gas{SpecificConstant: f.Pressure.Value / (f.Density * f.Temperature.Value), HeatCapacityRatio: f.HeatCapacityRatio.Value}
 	column := gas.Column{Gas: g, Lift: in.Gravity * in.Rise.Value}
+	if x := column.Lift / (g.SpecificConstant * f.Temperature.Value); !(x >= -highest && x <= highest) {
+		return gasDrops{}, &calc.Error{Kind: calc.ErrDomain, Quantity: "rise", Value: in.Rise.Value,
+			Detail: "so high a column of this gas has no pressure left at its upper end, or more than can be told at its lower one"}
+	}
 	ends := column.Ends(gas.Known{Pressure: f.Pressure.Value, Temperature: f.Temperature.Value, AtOutlet: in.OutletPressure.Valid})
 	out.Gas = GasRun{Line: gas.Line{Gas: g, Lift: column.Lift}, Stations: [4]gas.State{ends.In, ends.In, ends.Out, ends.Out}, AtOutlet: in.OutletPressure.Valid}
-	return gasDrops{elevation: ends.Weight, static: ends.Drop}
+	return gasDrops{elevation: ends.Weight, static: ends.Drop}, nil
 }
