@@ -7,6 +7,7 @@ import (
 	"log/slog"
 	"net/http"
 	"sync/atomic"
+	"time"
 
 	"github.com/labstack/echo/v4"
 
@@ -43,6 +44,9 @@ type Options struct {
 	// BatchSpool is how many bytes of answers are kept for a client that does not
 	// read them yet; 0 is DefaultBatchSpool.
 	BatchSpool int64
+	// BatchPatience is how long a full spool waits for a client who reads nothing; 0
+	// is ten seconds.
+	BatchPatience time.Duration
 }
 
 // DefaultBatchSpool holds the answers of some 200,000 rows.
@@ -58,6 +62,7 @@ type API struct {
 	state    atomic.Int32
 	document []byte // openapi.json
 	spool    int64
+	patience time.Duration
 }
 
 // New wires the routes. It fails only where the OpenAPI document is unusable,
@@ -70,6 +75,9 @@ func New(o Options) (*API, error) {
 	a := &API{service: o.Service, log: o.Logger, ids: newRequestIDs(), document: doc}
 	if a.spool = o.BatchSpool; a.spool == 0 {
 		a.spool = DefaultBatchSpool
+	}
+	if a.patience = o.BatchPatience; a.patience == 0 {
+		a.patience = spoolPatience
 	}
 	if a.log == nil {
 		a.log = slog.New(slog.DiscardHandler)

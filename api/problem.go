@@ -20,7 +20,7 @@ var (
 	methodNotAllowed  = &problem.Kind{Name: "method_not_allowed", Status: http.StatusMethodNotAllowed, Title: "This path does not take this method"}
 	bodyTooLarge      = &problem.Kind{Name: "body_too_large", Status: http.StatusRequestEntityTooLarge, Title: "The body is too large"}
 	uriTooLong        = &problem.Kind{Name: "uri_too_long", Status: http.StatusRequestURITooLong, Title: "The URL is too long"}
-	unsupportedMedia  = &problem.Kind{Name: "unsupported_media_type", Status: http.StatusUnsupportedMediaType, Title: "The body must be JSON"}
+	unsupportedMedia  = &problem.Kind{Name: "unsupported_media_type", Status: http.StatusUnsupportedMediaType, Title: "The body comes in a form that is not read here"}
 	invalidInput      = problem.InvalidInput
 	calculationFailed = problem.CalculationFailed
 	internal          = &problem.Kind{Name: "internal", Status: http.StatusInternalServerError, Title: "Something is wrong on our side"}
@@ -41,6 +41,7 @@ type refusal struct {
 	kind       *problem.Kind
 	detail     string
 	violations []document.Violation
+	unread     bool // more of the body may be on its way
 }
 
 func (r *refusal) Error() string { return r.kind.Name + ": " + r.detail }
@@ -57,15 +58,15 @@ func explain(err error) *refusal {
 		if read.Malformed {
 			kind = malformedBody
 		}
-		return &refusal{kind, summary(read.Violations), read.Violations}
+		return &refusal{kind: kind, detail: summary(read.Violations), violations: read.Violations}
 	case errors.As(err, &own):
 		return own
 	case errors.Is(err, calc.ErrNoConvergence), errors.Is(err, calc.ErrNonFinite):
-		return &refusal{calculationFailed, ourFault, nil}
+		return &refusal{kind: calculationFailed, detail: ourFault}
 	case errors.As(err, &routed):
 		return routing(routed.Code)
 	}
-	return &refusal{internal, ourFault, nil}
+	return &refusal{kind: internal, detail: ourFault}
 }
 
 // routing words what the router found. It refuses in two ways only; any other
@@ -73,11 +74,11 @@ func explain(err error) *refusal {
 func routing(status int) *refusal {
 	switch status {
 	case http.StatusNotFound:
-		return &refusal{notFound, "/openapi.json lists the paths", nil}
+		return &refusal{kind: notFound, detail: "/openapi.json lists the paths"}
 	case http.StatusMethodNotAllowed:
-		return &refusal{methodNotAllowed, "the Allow header lists the methods of this path", nil}
+		return &refusal{kind: methodNotAllowed, detail: "the Allow header lists the methods of this path"}
 	}
-	return &refusal{internal, ourFault, nil}
+	return &refusal{kind: internal, detail: ourFault}
 }
 
 // summary says in one sentence what the list of violations says in full.

@@ -45,17 +45,18 @@ func (a *API) fail(err error, c echo.Context) {
 	h := res.Header()
 	h.Set("Content-Type", "application/problem+json")
 	h.Set("Cache-Control", "no-store")
-	switch r.kind {
-	case notReady:
+	unread := r.unread || r.kind == bodyTooLarge
+	switch {
+	case r.kind == notReady:
 		h.Set("Retry-After", "1")
-	case bodyTooLarge:
+	case unread:
 		h.Set("Connection", "close")
 	}
 	if err := send(c, r.kind.Status, r.document(h.Get(requestIDHeader))); err != nil {
 		a.log.Warn("the problem document did not reach its client", "request_id", h.Get(requestIDHeader), "cause", err)
 		return
 	}
-	if r.kind == bodyTooLarge {
+	if unread {
 		drain(c)
 	}
 }

@@ -5,10 +5,8 @@ import (
 	"errors"
 	"fmt"
 	"io"
-	"mime"
 	"net/http"
 	"strconv"
-	"strings"
 	"time"
 
 	"github.com/labstack/echo/v4"
@@ -22,95 +20,115 @@ const maxArray = 64 << 20
 
 const rowsFailed = "X-Rows-Failed"
 
-// The media types of a batch.
-var batchTypes = map[string]batch.Format{"application/json": batch.JSON, "application/x-ndjson": batch.NDJSON, "text/csv": batch.CSV}
-
+// batchContentTypes are the media types of the answers.
 var batchContentTypes = map[batch.Format]string{batch.JSON: "application/json", batch.NDJSON: "application/x-ndjson", batch.CSV: "text/csv; charset=utf-8"}
+
+// maxColumns is how many bytes a batch laid out in columns may have: they are put
+// together in memory.
+const maxColumns = 256 << 20
+
+// spoolPatience is how long a full spool waits for a client who reads nothing. It is
+// shorter than the time after which a client who cannot send gives up.
+const spoolPatience = 10 * time.Second
 
 // segments answers many segments in one request.
 func (a *API) segments(c echo.Context) error {
-	o, failing, err := readBatch(c.Request())
+	q, err := readBatch(c.Request())
 	if err != nil {
 		return err
 	}
-	if o.In == batch.JSON && c.Request().ContentLength > maxArray {
+	if q.In == batch.JSON && c.Request().ContentLength > maxArray {
 		return arrayTooLarge()
 	}
-	if o.Out == batch.JSON {
-		err = a.wholeBatch(c, o, failing)
+	q.OnFault = a.rowFault(c)
+	if q.Out == batch.JSON {
+		err = a.wholeBatch(c, q)
 	} else {
-		err = a.streamedBatch(c, o)
+		err = a.streamedBatch(c, q)
 	}
-	if errors.Is(err, batch.ErrTooLarge) {
-		return arrayTooLarge()
-	}
-	return err
+	return batchFault(err)
 }
 
 func arrayTooLarge() error {
 	return &refusal{kind: bodyTooLarge, detail: fmt.Sprintf("a JSON array may have %d bytes; NDJSON and CSV stream without a bound", maxArray)}
 }
 
+// rowFault logs rows that failed by our fault: the client is told the row, the log
+// the cause.
+func (a *API) rowFault(c echo.Context) func(int, error) {
+	id, route := c.Response().Header().Get(requestIDHeader), c.Path()
+	return func(row int, err error) {
+		a.log.Error("row failed by our fault", "request_id", id, "route", route, "row", row, "cause", err.Error())
+	}
+}
+
 // wholeBatch answers with one JSON document, which says in its head how many rows
 // failed, and so is sent when all is answered.
-func (a *API) wholeBatch(c echo.Context, o batch.Options, failing bool) error {
-	spool := batch.NewSpool(a.spool)
-	defer spool.Close()
+func (a *API) wholeBatch(c echo.Context, q *batchQuery) error {
+	spool := batch.NewSpool(a.spool, 0)
+	defer func() { _ = spool.Close() }() // read to its end, or not worth reading
 	body := a.progress(c)
-	summary, err := batch.Run(c.Request().Context(), a.service, body, spool, o)
+	summary, err := batch.Run(c.Request().Context(), a.service, body, spool, q.Options)
 	if err != nil {
-		return a.batchFault(err)
+		return err
 	}
-	if failing && summary.Failed > 0 {
+	if q.failing && summary.Failed > 0 {
 		return &refusal{kind: invalidInput, detail: fmt.Sprintf("%d of %d rows cannot be answered", summary.Failed, summary.Total), violations: summary.FirstErrors}
 	}
 	spool.End(nil)
 	c.Response().Header().Set(rowsFailed, strconv.Itoa(summary.Failed))
-	return sendSpool(c, o.Out, spool, body)
+	return sendSpool(c, q.Out, spool, body)
+}
+
+// stream is a batch that is answered while its rows come in.
+type stream struct {
+	query  *batchQuery
+	spool  *batch.Spool
+	body   *progress
+	failed int
+	done   chan struct{}
 }
 
 // streamedBatch answers while rows come in. Answers pass through a spool, so that a
 // client that reads only when it has sent everything does not wait for itself.
-func (a *API) streamedBatch(c echo.Context, o batch.Options) error {
+func (a *API) streamedBatch(c echo.Context, q *batchQuery) error {
 	ctx, cancel := context.WithCancel(c.Request().Context())
 	defer cancel()
-	spool := batch.NewSpool(a.spool)
-	body := a.progress(c)
-	if err := body.control.EnableFullDuplex(); err != nil && !errors.Is(err, http.ErrNotSupported) {
+	s := &stream{query: q, spool: batch.NewSpool(a.spool, a.patience), body: a.progress(c), done: make(chan struct{})}
+	if err := s.body.control.EnableFullDuplex(); err != nil && !errors.Is(err, http.ErrNotSupported) {
 		return err
 	}
 	c.Response().Header().Set("Trailer", rowsFailed)
-	var failed int
-	done := make(chan struct{})
-	go func() {
-		defer close(done)
-		summary, err := batch.Run(ctx, a.service, body, spool, o)
-		failed = summary.Failed
-		full := errors.Is(err, batch.ErrSpoolFull)
-		if full {
-			failed++
-			err = spool.WriteLast(batch.LastRow(o, summary))
-		}
-		spool.End(err)
-		if full { // a client that reads only when all is sent must be let go on sending
-			_, _ = io.Copy(io.Discard, body)
-		}
-	}()
-	err := sendSpool(c, o.Out, spool, body)
-	cancel()
-	select {
-	case <-done:
-	default: // it may be waiting for a client that sends no more
-		_ = body.control.SetReadDeadline(time.Now())
-		_ = spool.Close()
-		<-done
+	go s.answer(ctx, a.service)
+	err := sendSpool(c, q.Out, s.spool, s.body)
+	if err != nil { // the answering may be waiting for a client that neither sends nor reads
+		cancel()
+		s.body.stop()
+		_ = s.spool.Close()
 	}
-	_ = spool.Close()
+	<-s.done
+	_ = s.spool.Close() // read to its end, or without a reader
 	if err != nil {
-		return a.batchFault(err)
+		c.Response().Header().Del("Trailer")
+		return err
 	}
-	c.Response().Header().Set(rowsFailed, strconv.Itoa(failed))
+	c.Response().Header().Set(rowsFailed, strconv.Itoa(s.failed))
 	return nil
+}
+
+// answer answers the rows into the spool.
+func (s *stream) answer(ctx context.Context, desks batch.Desks) {
+	defer close(s.done)
+	summary, err := batch.Run(ctx, desks, s.body, s.spool, s.query.Options)
+	s.failed = summary.Failed
+	if !errors.Is(err, batch.ErrSpoolFull) {
+		s.spool.End(err)
+		return
+	}
+	s.failed++
+	s.spool.WriteLast(batch.LastRow(s.query.Options, summary))
+	s.spool.End(nil)
+	_, _ = io.Copy(io.Discard, s.body) // a client that reads only when all is sent must be let go on sending
 }
 
 // sendSpool sends what the spool gives. Nothing is out before its first bytes, so that a
@@ -140,16 +158,22 @@ func sendSpool(c echo.Context, form batch.Format, spool *batch.Spool, p *progres
 	}
 }
 
-// batchFault tells a fault of reading from one of ours.
-func (a *API) batchFault(err error) error {
+// batchFault words what ended a batch. What is refused before all of it has been read
+// is read to a bound, so that the refusal reaches a client that is still sending.
+func batchFault(err error) error {
 	var refused *document.Refusal
+	var r *refusal
 	switch {
-	case errors.As(err, &refused), errors.Is(err, batch.ErrTooLarge):
-		return err
-	case errors.Is(err, batch.ErrSpoolFull):
+	case errors.Is(err, batch.ErrTooLarge):
+		return arrayTooLarge()
+	case errors.Is(err, batch.ErrSpoolFull), errors.Is(err, batch.ErrColumnsTooLarge):
 		return &refusal{kind: bodyTooLarge, detail: "the answers are too many for one JSON document; ask for NDJSON or CSV"}
 	case errors.Is(err, io.ErrUnexpectedEOF):
 		return cutOff(err)
+	case errors.As(err, &refused), errors.As(err, &r):
+		r = explain(err)
+		r.unread = true
+		return r
 	}
 	return err
 }
@@ -173,89 +197,7 @@ func (p *progress) Read(b []byte) (int, error) {
 	return n, err
 }
 
+// stop ends a read that may be waiting.
+func (p *progress) stop() { _ = p.control.SetReadDeadline(time.Now()) }
+
 func (p *progress) writing() { _ = p.control.SetWriteDeadline(time.Now().Add(writeTimeout)) }
-
-// readBatch reads how a batch comes and how it is wanted.
-func readBatch(r *http.Request) (o batch.Options, failing bool, err error) {
-	if e := r.Header.Values("Content-Encoding"); len(e) > 0 && !(len(e) == 1 && strings.EqualFold(e[0], "identity")) {
-		return o, false, &refusal{kind: unsupportedMedia, detail: "send the body as it is, without Content-Encoding"}
-	}
-	if o.In, err = batchType(r.Header); err != nil {
-		return o, false, err
-	}
-	o.MaxArray = maxArray
-	o.Out = acceptedType(r.Header.Values("Accept"), o.In)
-	values, err := readQuery(r.URL.RawQuery, "layout", "carry", "on_error", "dialect", "bom", "report_units")
-	if err != nil {
-		return o, false, err
-	}
-	var wrong []document.Violation
-	refuse := func(name, detail string) {
-		wrong = append(wrong, document.Violation{Parameter: name, Code: "unknown_value", Detail: detail})
-	}
-	layouts := map[string]batch.Layout{"": batch.FlatRows, "rows": batch.FlatRows, "columns": batch.Columns, "blocks": batch.Blocks}
-	var known bool
-	if o.Layout, known = layouts[values[0]]; !known {
-		refuse("layout", "layout is rows, columns or blocks")
-	}
-	if values[1] != "" {
-		for name := range strings.SplitSeq(values[1], ",") {
-			o.Carry = append(o.Carry, strings.TrimSpace(name))
-		}
-	}
-	switch values[2] {
-	case "":
-	case "fail":
-		failing = true
-		if o.Out != batch.JSON {
-			refuse("on_error", "on_error=fail needs the whole answer at once: ask for application/json")
-		}
-	default:
-		refuse("on_error", "on_error takes fail, to be answered 422 when a row fails; leave it out for a problem in each row")
-	}
-	if o.Dialect, known = batch.DialectByName(values[3]); !known {
-		refuse("dialect", "dialect is one of "+strings.Join(batch.DialectNames(), ", "))
-	}
-	switch values[4] {
-	case "", "false":
-	case "true":
-		o.BOM = true
-	default:
-		refuse("bom", "bom is true or false")
-	}
-	var bad *document.Refusal
-	if o.Report, err = readReport(values[5]); errors.As(err, &bad) {
-		wrong = append(wrong, bad.Violations...)
-	}
-	if wrong != nil {
-		return o, false, &document.Refusal{Violations: wrong}
-	}
-	return o, failing, nil
-}
-
-// batchType is the form of the body.
-func batchType(h http.Header) (batch.Format, error) {
-	declared := h.Values("Content-Type")
-	if len(declared) == 1 {
-		media, params, err := mime.ParseMediaType(declared[0])
-		charset, told := params["charset"]
-		if form, ok := batchTypes[media]; ok && err == nil && (!told || strings.EqualFold(charset, "utf-8")) {
-			return form, nil
-		}
-	}
-	return 0, &refusal{kind: unsupportedMedia, detail: "send Content-Type: application/json, application/x-ndjson or text/csv, in UTF-8"}
-}
-
-// acceptedType is the form of the answer: the first that the client names and the
-// service has, else the one that came.
-func acceptedType(headers []string, in batch.Format) batch.Format {
-	for _, h := range headers {
-		for one := range strings.SplitSeq(h, ",") {
-			media, _, err := mime.ParseMediaType(strings.TrimSpace(one))
-			if form, ok := batchTypes[media]; ok && err == nil {
-				return form
-			}
-		}
-	}
-	return in
-}

@@ -1,19 +1,13 @@
 package api_test
 
 import (
-	"bufio"
 	"bytes"
 	"encoding/csv"
 	"encoding/json"
-	"fmt"
-	"io"
-	"log/slog"
-	"net"
 	"net/http"
 	"net/http/httptest"
 	"strings"
 	"testing"
-	"time"
 
 	"borewright/api"
 	"borewright/service"
@@ -123,6 +117,8 @@ func TestBatchForms(t *testing.T) {
 		{"application/json", "", "application/json"}, {"application/json", "*/*", "application/json"}, {"application/json", "application/x-ndjson", "application/x-ndjson"},
 		{"application/json", "text/csv, */*", "text/csv; charset=utf-8"}, {"application/x-ndjson", "", "application/x-ndjson"},
 		{"application/x-ndjson", "application/json;q=0.9", "application/json"}, {"application/x-ndjson; charset=utf-8", "text/html", "application/x-ndjson"},
+		{"application/json", "text/csv;q=0.5, application/x-ndjson;q=0.8, */*;q=0.1", "application/x-ndjson"}, {"application/json", "text/csv;q=0, text/html", "application/json"},
+		{"application/json", "text/csv;q=0.5, */*", "application/json"}, {"application/json", "text/csv;q=high", "application/json"}, {"application/json", "text/html, text/csv", "text/csv; charset=utf-8"},
 	} {
 		res := batchOf(face, "/v1/segments", c.in, c.accept, oneLine)
 		if body := text(t, res); res.StatusCode != 200 || res.Header.Get("Content-Type") != c.out || !strings.Contains(body, "0.0078539816339744") {
@@ -171,110 +167,34 @@ func TestBadBatches(t *testing.T) {
 	if len(all.Errors) != 4 {
 		t.Errorf("not all at once: %+v", all.Errors)
 	}
-	broken, _ := newFace(t, failing(service.ErrCalculation))
-	wantProblem(t, batchOf(broken, "/v1/segments", "application/json", "", "["+oneLine+"]"), 500, "internal")
-}
-
-// batchServer is a real server on loopback with a spool of the given size.
-func batchServer(t *testing.T, spool int64) string {
-	t.Helper()
-	face, err := api.New(api.Options{Service: service.New(), BatchSpool: spool})
-	if err != nil {
-		t.Fatal(err)
-	}
-	face.Ready()
-	server := httptest.NewUnstartedServer(face)
-	server.Config = api.Server(face, slog.New(slog.DiscardHandler))
-	listener, err := net.Listen("tcp", "127.0.0.1:0")
-	if err != nil {
-		t.Fatal(err)
-	}
-	go func() { _ = server.Config.Serve(listener) }()
-	t.Cleanup(func() { _ = server.Config.Close() })
-	return listener.Addr().String()
-}
-
-// sendThenRead sends a whole NDJSON body over a connection before it reads a byte, as
-// many clients do, and gives the answer.
-func sendThenRead(t *testing.T, address string, rows int) *http.Response {
-	t.Helper()
-	conn, err := net.Dial("tcp", address)
-	if err != nil {
-		t.Fatal(err)
-	}
-	t.Cleanup(func() { _ = conn.Close() })
-	if err := conn.SetDeadline(time.Now().Add(time.Minute)); err != nil {
-		t.Fatal(err)
-	}
-	w := bufio.NewWriterSize(conn, 1<<20)
-	fmt.Fprintf(w, "POST /v1/segments HTTP/1.1\r\nHost: x\r\nContent-Type: application/x-ndjson\r\nContent-Length: %d\r\n\r\n", rows*(len(oneLine)+1))
-	for range rows {
-		if _, err := io.WriteString(w, oneLine+"\n"); err != nil {
-			t.Fatal(err)
+	for _, media := range []string{"application/json", "application/x-ndjson"} {
+		broken, logged := newFace(t, failing(service.ErrCalculation))
+		wantProblem(t, batchOf(broken, "/v1/segments", media, "", "["+oneLine+"]"), 500, "internal")
+		if !strings.Contains(logged.String(), "there is no desk") {
+			t.Errorf("%s: the cause is not logged: %s", media, logged)
 		}
 	}
-	if err := w.Flush(); err != nil {
-		t.Fatalf("the server stopped reading: %v", err)
-	}
-	res, err := http.ReadResponse(bufio.NewReader(conn), nil)
-	if err != nil {
-		t.Fatal(err)
-	}
-	return res
 }
 
-func TestClientThatSendsAllBeforeItReads(t *testing.T) {
-	const rows = 30000 // 60 MB of answers: no socket holds them
-	res := sendThenRead(t, batchServer(t, 0), rows)
-	lines := bufio.NewScanner(res.Body)
-	lines.Buffer(nil, 1<<20)
-	n := 0
-	for lines.Scan() {
-		n++
-	}
-	if err := lines.Err(); err != nil || n != rows || res.Trailer.Get("X-Rows-Failed") != "0" {
-		t.Errorf("%d rows, %v, trailer %v", n, err, res.Trailer)
-	}
-}
+// deskless answers, but every row of a batch meets a fault of ours.
+type deskless struct{ api.Answerer }
 
-func TestFullSpoolEndsTheStreamWithItsCause(t *testing.T) {
-	res := sendThenRead(t, batchServer(t, 3<<20), 30000)
-	lines := bufio.NewScanner(res.Body)
-	lines.Buffer(nil, 1<<20)
-	n, last := 0, ""
-	for lines.Scan() {
-		n, last = n+1, lines.Text()
-	}
-	var row struct {
-		Row     int
-		Problem struct{ Type string }
-	}
-	if err := json.Unmarshal([]byte(last), &row); err != nil || lines.Err() != nil {
-		t.Fatal(err, lines.Err())
-	}
-	if row.Problem.Type != "/problems/spool_full" || row.Row != n || n >= 30000 || n < 1000 {
-		t.Errorf("%d rows, the last %s", n, last)
-	}
-}
+func (deskless) Desk() *service.Desk { return nil }
 
-// A client that goes away ends the work; the server goes on.
-func TestClientThatGoesAway(t *testing.T) {
-	address := batchServer(t, 0)
-	for range 5 {
-		conn, err := net.Dial("tcp", address)
-		if err != nil {
-			t.Fatal(err)
-		}
-		fmt.Fprintf(conn, "POST /v1/segments HTTP/1.1\r\nHost: x\r\nContent-Type: application/x-ndjson\r\nContent-Length: 1000000\r\n\r\n%s\n", oneLine)
-		if err := conn.Close(); err != nil {
-			t.Fatal(err)
+// A row that fails by our fault is a problem in its place; the log has its cause, and
+// the client has not.
+func TestFaultsOfRowsAreLogged(t *testing.T) {
+	face, logged := newFace(t, deskless{service.New()})
+	res := batchOf(face, "/v1/segments", "application/x-ndjson", "", "{}\n{}\n")
+	rows := strings.Split(strings.TrimSpace(text(t, res)), "\n")
+	if len(rows) != 2 || !strings.Contains(rows[1], `"row":2,"id":null,"status":"failed","problem":{"type":"/problems/calculation_failed"`) || strings.Contains(rows[1], "nil pointer") {
+		t.Errorf("%q", rows)
+	}
+	for _, want := range []string{`"row":2`, "nil pointer", res.Header.Get("X-Request-Id")} {
+		if !strings.Contains(logged.String(), want) {
+			t.Errorf("no %q in the log %s", want, logged)
 		}
 	}
-	res, err := http.Post("http://"+address+"/v1/segments", "application/json", strings.NewReader("["+oneLine+"]"))
-	if err != nil || res.StatusCode != 200 {
-		t.Fatal(res, err)
-	}
-	_ = res.Body.Close()
 }
 
 func FuzzBatch(f *testing.F) {

@@ -2,6 +2,7 @@ package answer
 
 import (
 	"encoding/hex"
+	"regexp"
 	"strconv"
 	"strings"
 
@@ -17,7 +18,7 @@ type Carried struct{ Name, Text string }
 type Row struct {
 	Number  int // from 1
 	ID      string
-	Carried []Carried
+	Carried []Carried // nil where the batch carries nothing
 }
 
 // Rows writes the answers of a batch, one row each. Every row has the same keys.
@@ -41,7 +42,7 @@ func (r *Row) appendHead(dst []byte, status string) []byte {
 		dst = jsontext.AppendString(dst, r.ID)
 	}
 	dst = append(append(append(dst, `,"status":"`...), status...), '"')
-	if len(r.Carried) == 0 {
+	if r.Carried == nil {
 		return dst
 	}
 	dst = append(dst, `,"carried":{`...)
@@ -261,9 +262,9 @@ func (w *Rows) appendNumber(dst []byte, v float64) []byte {
 }
 
 // appendText appends a cell of text. One that a spreadsheet would take for a
-// formula begins with an apostrophe.
+// formula begins with an apostrophe; a number is none, whatever its sign.
 func (w *Rows) appendText(dst []byte, s string) []byte {
-	escape := s != "" && strings.IndexByte("=+-@\t\r", s[0]) >= 0
+	escape := s != "" && strings.IndexByte("=+-@\t\r", s[0]) >= 0 && !plainNumber.MatchString(s)
 	if !escape && strings.IndexByte(s, w.Comma) < 0 && !strings.ContainsAny(s, "\"\r\n") {
 		return append(dst, s...)
 	}
@@ -279,3 +280,6 @@ func (w *Rows) appendText(dst []byte, s string) []byte {
 	}
 	return append(dst, '"')
 }
+
+// plainNumber is what no spreadsheet takes for a formula although it begins like one.
+var plainNumber = regexp.MustCompile(`^[+-]?([0-9]+[.,]?[0-9]*|[.,][0-9]+)([eE][+-]?[0-9]+)?$`)

@@ -46,12 +46,18 @@ type Options struct {
 	BOM      bool // begin CSV with a byte order mark, for a spreadsheet program
 	Report   *answer.Report
 	MaxArray int64 // bytes of a JSON array; 0: no bound
+	MaxHeld  int64 // bytes of columns, which are put together in memory; 0: no bound
+	// OnFault is told of rows that failed by our fault and not by their own: the rows
+	// do not say why. It is called by several goroutines.
+	OnFault func(row int, err error)
 }
 
 // Summary counts the rows.
 type Summary struct {
 	Total, OK, Failed int
+	Faults            int                  // of the failed ones: by our fault
 	FirstErrors       []document.Violation // of failed rows, pointers from the batch
+	carried           []string
 }
 
 // maxErrors is how many violations a summary keeps.
@@ -65,7 +71,8 @@ type Desks interface{ Desk() *service.Desk }
 
 // Run answers the rows of r into w. Its error is a *document.Refusal where the batch
 // as a whole cannot be read, or what reading and writing met.
-func Run(ctx context.Context, s Desks, r io.Reader, w io.Writer, o Options) (Summary, error) {
+func Run(ctx context.Context, s Desks, r io.Reader, w io.Writer, o Options) (summary Summary, err error) {
+	defer guard(&err)
 	if err := o.check(); err != nil {
 		return Summary{}, err
 	}
@@ -73,12 +80,17 @@ func Run(ctx context.Context, s Desks, r io.Reader, w io.Writer, o Options) (Sum
 	if err != nil {
 		return Summary{}, err
 	}
-	sink := newSink(w, &o, source)
+	pass := o.carriedNames(source)
+	if err := o.checkCarried(pass); err != nil {
+		return Summary{}, err
+	}
+	sink := newSink(w, &o, pass)
 	if err := sink.begin(); err != nil {
 		return Summary{}, err
 	}
-	p := pipeline{service: s, options: &o, rows: sink.rows, pass: sink.pass}
-	summary, err := p.run(ctx, source, sink)
+	p := pipeline{service: s, options: &o, rows: sink.rows, pass: pass}
+	summary, err = p.run(ctx, source, sink)
+	summary.carried = pass
 	if err != nil {
 		return summary, err
 	}
@@ -90,10 +102,18 @@ func (o *Options) check() error {
 	switch {
 	case o.Layout != FlatRows && o.Out == CSV, o.Layout == Columns && o.Out == NDJSON:
 		return refusal(false, "layout", "unknown_value", "CSV has rows; NDJSON has rows or blocks; columns are a layout of JSON")
-	case o.In != CSV && o.Out == CSV && slices.Contains(o.Carry, carryAll):
-		return refusal(false, "carry", "unknown_value", "a CSV of posted documents needs the names of the tags to carry: carry=from,to")
+	case o.In != CSV && o.oneHead() && slices.Contains(o.Carry, carryAll):
+		return refusal(false, "carry", "unknown_value", "columns for the tags of posted documents need their names: carry=from,to")
 	}
 	return nil
+}
+
+// guard turns a panic into an error: a batch runs on goroutines of its own, and a
+// fault in one of them must not take the process with it.
+func guard(err *error) {
+	if v := recover(); v != nil {
+		*err = fmt.Errorf("panic: %v\n%s", v, debug.Stack())
+	}
 }
 
 // workers is how many rows are answered at the same time.
@@ -112,61 +132,79 @@ type request struct {
 
 // chunk is a run of rows that one worker answers.
 type chunk struct {
-	requests []request
-	in       []byte // the documents
-	out      []byte // their answers
-	ok       int
-	failed   int
-	errors   []document.Violation
-	fault    error
-	done     chan struct{}
+	requests           []request
+	in                 []byte // the documents
+	out                []byte // their answers
+	ok, failed, faults int
+	errors             []document.Violation
+	done               chan struct{}
 }
 
-// answerChunk answers the rows of a chunk one after the other.
-func (p *pipeline) answerChunk(d *service.Desk, c *chunk) {
-	defer func() {
-		if v := recover(); v != nil { // one row must not take the process with it
-			c.fault = fmt.Errorf("panic in a batch: %v\n%s", v, debug.Stack())
-		}
-	}()
+// answerChunk answers the rows of a chunk one after the other, and gives the desk to
+// go on with: one that a row has left in disorder is not used again.
+func (p *pipeline) answerChunk(d *service.Desk, c *chunk) *service.Desk {
 	for i := range c.requests {
-		p.answerRow(d, c, &c.requests[i])
+		if !p.answerRow(d, c, &c.requests[i]) {
+			d = p.service.Desk()
+		}
 	}
+	return d
 }
 
-func (p *pipeline) answerRow(d *service.Desk, c *chunk, r *request) {
-	kind, violations := problem.InvalidInput, r.wrong
-	row := answer.Row{Number: r.number, ID: r.id, Carried: r.carried}
-	if r.tooLarge {
-		kind = problem.RowTooLarge
-		violations = []document.Violation{{Code: "row_too_large", Detail: "a row has at most 64 kB; send what is larger to /v1/segment by itself"}}
+// answerRow answers one row, and reports whether the desk is still in order: a panic
+// costs its row and neither the others nor the process.
+func (p *pipeline) answerRow(d *service.Desk, c *chunk, r *request) bool {
+	row := answer.Row{Number: r.number, ID: r.id, Carried: p.pad(r.carried)}
+	mark := len(c.out)
+	inOrder, err := p.tryRow(d, c, r, &row)
+	if err != nil {
+		c.out = c.out[:mark]
+		p.fail(c, r, &row, err)
+	} else {
+		c.ok++
 	}
-	row.Carried = p.pad(row.Carried)
-	if violations == nil {
-		entry := service.Posted
-		if r.typed {
-			entry = service.Typed
-		}
-		a, err := d.Answer(c.in[r.start:r.end], document.SegmentDoor, entry)
-		if row.ID == "" {
-			row.ID = d.ID()
-		}
-		if p.options.In != CSV {
-			row.Carried = p.options.tags(d.Tags())
-		}
-		if err == nil {
-			mark := len(c.out)
-			if c.out, err = p.appendAnswer(c.out, &row, a); err == nil {
-				c.ok++
-				return
-			}
-			c.out = c.out[:mark]
-		}
-		if kind, violations = explain(err); r.typed {
-			violations = byNames(violations)
+	return inOrder
+}
+
+// tryRow appends the answer of a row, or says why there is none.
+func (p *pipeline) tryRow(d *service.Desk, c *chunk, r *request, row *answer.Row) (inOrder bool, err error) {
+	defer guard(&err)
+	switch {
+	case r.tooLarge:
+		return true, errRowTooLarge
+	case r.wrong != nil:
+		return true, &document.Refusal{Violations: r.wrong}
+	}
+	entry := service.Posted
+	if r.typed {
+		entry = service.Typed
+	}
+	a, err := d.Answer(c.in[r.start:r.end], document.SegmentDoor, entry)
+	if row.ID == "" {
+		row.ID = d.ID()
+	}
+	if p.options.In != CSV {
+		row.Carried = p.options.tags(d.Tags())
+	}
+	if err == nil {
+		c.out, err = p.appendAnswer(c.out, row, a)
+	}
+	return true, err
+}
+
+// fail writes the problem of a row in its place and counts it.
+func (p *pipeline) fail(c *chunk, r *request, row *answer.Row, err error) {
+	kind, violations := explain(err)
+	if r.typed && r.wrong == nil {
+		violations = byNames(violations)
+	}
+	if kind == problem.CalculationFailed {
+		c.faults++
+		if p.options.OnFault != nil {
+			p.options.OnFault(r.number, err)
 		}
 	}
-	c.out = p.appendFailed(c.out, &row, kind, violations)
+	c.out = p.appendFailed(c.out, row, kind, violations)
 	c.failed++
 	for _, v := range violations {
 		if len(c.errors) < maxErrors {
@@ -179,10 +217,7 @@ func (p *pipeline) answerRow(d *service.Desk, c *chunk, r *request) {
 func LastRow(o Options, s Summary) []byte {
 	p := pipeline{options: &o, rows: rowsOf(&o)}
 	detail := "the client has not read its answers and no more can be kept for it; read while sending, or send fewer rows at a time"
-	row := answer.Row{Number: s.Total + 1}
-	if o.Out == CSV {
-		p.pass = make([]string, len(o.Carry))
-		row.Carried = p.pad(nil)
-	}
+	p.pass = s.carried
+	row := answer.Row{Number: s.Total + 1, Carried: p.pad(nil)}
 	return p.appendFailed(nil, &row, problem.SpoolFull, []document.Violation{{Code: problem.SpoolFull.Name, Detail: detail}})
 }

@@ -2,7 +2,6 @@ package batch
 
 import (
 	"errors"
-	"slices"
 	"strconv"
 
 	"borewright/service"
@@ -11,11 +10,16 @@ import (
 	"borewright/service/problem"
 )
 
+// errRowTooLarge is a row beyond the bound, of which the end was not even read.
+var errRowTooLarge = errors.New("the row is too large")
+
 // explain words why a row could not be answered. What is our fault is told without
 // its cause, and never stops the other rows.
 func explain(err error) (*problem.Kind, []document.Violation) {
 	var r *document.Refusal
 	switch {
+	case errors.Is(err, errRowTooLarge):
+		return problem.RowTooLarge, []document.Violation{{Code: problem.RowTooLarge.Name, Detail: "a row has at most 64 kB; send what is larger to /v1/segment by itself"}}
 	case errors.As(err, &r) && r.Malformed:
 		return problem.MalformedBody, r.Violations
 	case errors.As(err, &r):
@@ -42,44 +46,6 @@ func inBatch(v document.Violation, row int) document.Violation {
 	v.Pointer = "/" + at + v.Pointer
 	return v
 }
-
-// tags are those of a posted document that the batch carries along; a line of CSV
-// has a cell for each name, whether or not the document has the tag.
-func (o *Options) tags(list []document.Tag) []answer.Carried {
-	var carried []answer.Carried
-	if o.Out == CSV {
-		for _, name := range o.Carry {
-			carried = append(carried, answer.Carried{Name: name, Text: tagOf(list, name)})
-		}
-		return carried
-	}
-	for _, t := range list {
-		if slices.Contains(o.Carry, t.Name) || slices.Contains(o.Carry, carryAll) {
-			carried = append(carried, answer.Carried{Name: t.Name, Text: t.Text})
-		}
-	}
-	return carried
-}
-
-func tagOf(list []document.Tag, name string) string {
-	for _, t := range list {
-		if t.Name == name {
-			return t.Text
-		}
-	}
-	return ""
-}
-
-// pad gives a line of CSV a cell for every carried column.
-func (p *pipeline) pad(carried []answer.Carried) []answer.Carried {
-	for p.options.Out == CSV && len(carried) < len(p.pass) {
-		carried = append(carried, answer.Carried{Name: p.pass[len(carried)]})
-	}
-	return carried
-}
-
-// carryAll carries every column and tag that is no name of ours.
-const carryAll = "*"
 
 func (p *pipeline) appendAnswer(dst []byte, row *answer.Row, a *answer.Answer) ([]byte, error) {
 	var err error

@@ -15,7 +15,7 @@ type pipeline struct {
 	service Desks
 	options *Options
 	rows    *answer.Rows
-	pass    []string // names of the carried columns of a CSV
+	pass    []string // names of the carried columns
 }
 
 // queued is how many chunks may wait between two stages for each worker: with the
@@ -27,13 +27,12 @@ func (p *pipeline) run(ctx context.Context, source source, sink *sink) (Summary,
 	defer cancel(nil)
 	n := workers()
 	work, order := make(chan *chunk, queued*n), make(chan *chunk, 2*queued*n)
-	free := make(chan *chunk, 4*queued*n)
 	var answering sync.WaitGroup
 	for range n {
+		d := p.service.Desk()
 		answering.Go(func() {
-			d := p.service.Desk()
 			for c := range work {
-				p.answerChunk(d, c)
+				d = p.answerChunk(d, c)
 				close(c.done)
 			}
 		})
@@ -41,11 +40,12 @@ func (p *pipeline) run(ctx context.Context, source source, sink *sink) (Summary,
 	var readErr error
 	var reading sync.WaitGroup
 	reading.Go(func() {
-		readErr = p.read(ctx, source, work, order, free)
-		close(work)
-		close(order)
+		defer close(order)
+		defer close(work)
+		defer guard(&readErr)
+		readErr = p.read(ctx, source, work, order)
 	})
-	summary, err := p.write(ctx, sink, order, free)
+	summary, err := p.write(ctx, sink, order)
 	if err != nil {
 		cancel(err)
 		for range order { // let the reader end
@@ -61,9 +61,9 @@ func (p *pipeline) run(ctx context.Context, source source, sink *sink) (Summary,
 
 // read fills chunks until the source ends. A chunk goes off as soon as the source
 // would have to wait for more, so that a client who waits for each answer gets it.
-func (p *pipeline) read(ctx context.Context, source source, work, order, free chan *chunk) error {
+func (p *pipeline) read(ctx context.Context, source source, work, order chan *chunk) error {
 	for {
-		c := takeChunk(free)
+		c := takeChunk()
 		err := fill(c, source)
 		if len(c.requests) > 0 {
 			select {
@@ -100,44 +100,53 @@ func fill(c *chunk, source source) error {
 const (
 	chunkBytes = 16 << 10
 	chunkRows  = 64
+	chunkKept  = 1 << 20 // bytes of a chunk that is used again
 )
 
-func takeChunk(free chan *chunk) *chunk {
-	select {
-	case c := <-free:
-		*c = chunk{requests: c.requests[:0], in: c.in[:0], out: c.out[:0], done: make(chan struct{})}
-		return c
-	default:
-		return &chunk{done: make(chan struct{})}
+// chunks are those that wait to be used again, by this batch or another.
+var chunks = sync.Pool{New: func() any { return new(chunk) }}
+
+func takeChunk() *chunk {
+	c := chunks.Get().(*chunk)
+	*c = chunk{requests: c.requests[:0], in: c.in[:0], out: c.out[:0], done: make(chan struct{})}
+	return c
+}
+
+// giveBack keeps a chunk for the next rows; one that has grown large is let go.
+func giveBack(c *chunk) {
+	if cap(c.in)+cap(c.out) > chunkKept {
+		return
 	}
+	clear(c.requests)
+	chunks.Put(c)
 }
 
 // write takes the chunks in the order in which they were read.
-func (p *pipeline) write(ctx context.Context, sink *sink, order, free chan *chunk) (Summary, error) {
+func (p *pipeline) write(ctx context.Context, sink *sink, order chan *chunk) (Summary, error) {
 	var s Summary
 	for c := range order {
 		<-c.done
-		if c.fault != nil {
-			return s, c.fault
-		}
 		if err := sink.write(c.out); err != nil {
 			return s, err
 		}
-		s.Total += c.ok + c.failed
-		s.OK += c.ok
-		s.Failed += c.failed
-		if room := maxErrors - len(s.FirstErrors); room > 0 {
-			s.FirstErrors = append(s.FirstErrors, c.errors[:min(room, len(c.errors))]...)
-		}
-		if err := ctx.Err(); err != nil {
+		s.add(c)
+		giveBack(c)
+		if ctx.Err() != nil {
 			return s, context.Cause(ctx)
-		}
-		select {
-		case free <- c:
-		default:
 		}
 	}
 	return s, nil
+}
+
+// add counts the rows of a chunk.
+func (s *Summary) add(c *chunk) {
+	s.Total += c.ok + c.failed
+	s.OK += c.ok
+	s.Failed += c.failed
+	s.Faults += c.faults
+	if room := maxErrors - len(s.FirstErrors); room > 0 {
+		s.FirstErrors = append(s.FirstErrors, c.errors[:min(room, len(c.errors))]...)
+	}
 }
 
 // refusal of the whole batch.

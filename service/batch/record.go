@@ -8,8 +8,6 @@ import (
 	"strings"
 )
 
-var errRecordTooLarge = errors.New("the record is too large")
-
 // readRecord reads the bytes of one record of CSV (RFC 4180): up to the end of a line
 // outside quotes. One beyond the bound is dropped to the end of its line.
 func (t *list) readRecord() error {
@@ -19,13 +17,14 @@ func (t *list) readRecord() error {
 		part, err := t.in.ReadSlice('\n')
 		t.record = append(t.record, part...)
 		switch {
-		case errors.Is(err, bufio.ErrBufferFull) || len(t.record) > maxRow:
-			if len(part) == 0 || part[len(part)-1] != '\n' {
-				if err := skipLine(t.in); err != nil {
-					return err
-				}
+		case errors.Is(err, bufio.ErrBufferFull) || len(bytes.TrimRight(t.record, "\r\n")) > maxRow:
+			if err == nil || errors.Is(err, io.EOF) {
+				return errRowTooLarge
 			}
-			return errRecordTooLarge
+			if err := skipLine(t.in); err != nil && !errors.Is(err, io.EOF) {
+				return err
+			}
+			return errRowTooLarge
 		case err != nil && !errors.Is(err, io.EOF):
 			return err
 		}

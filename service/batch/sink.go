@@ -2,7 +2,9 @@ package batch
 
 import (
 	"bytes"
+	"errors"
 	"io"
+	"slices"
 	"strconv"
 
 	"borewright/service/answer"
@@ -16,15 +18,12 @@ type sink struct {
 	rows    *answer.Rows
 	pass    []string
 	columns [][]byte // of the columns layout
+	held    int64    // bytes of them
 	last    []byte   // held back: the comma behind the last row of a JSON array
 	table   answer.TableText
 }
 
-func newSink(w io.Writer, o *Options, in source) *sink {
-	pass := in.carried()
-	if o.In != CSV {
-		pass = o.Carry
-	}
+func newSink(w io.Writer, o *Options, pass []string) *sink {
 	return &sink{out: w, options: o, rows: rowsOf(o), pass: pass}
 }
 
@@ -47,11 +46,11 @@ func (s *sink) begin() error {
 	case s.options.Out == CSV:
 		var head []byte
 		if s.options.BOM {
-			head = append(head, "\xef\xbb\xbf"...)
+			head = append(head, byteOrderMark...)
 		}
 		return s.put(s.rows.AppendCSVHeader(head, s.pass))
 	case s.options.Out == JSON && s.options.Layout == Columns:
-		s.columns = make([][]byte, len(rowColumns)+len(answer.ColumnNames()))
+		s.columns = make([][]byte, len(s.columnNames()))
 		return nil
 	case s.options.Out == JSON:
 		return s.put([]byte(`{"rows":[`))
@@ -68,8 +67,7 @@ func (s *sink) write(b []byte) error {
 		s.table.Add(b)
 		return nil
 	case s.options.Out == JSON && s.options.Layout == Columns:
-		s.column(b)
-		return nil
+		return s.column(b)
 	case s.options.Out == JSON:
 		if len(s.last) > 0 {
 			if err := s.put(s.last); err != nil {
@@ -85,8 +83,19 @@ func (s *sink) write(b []byte) error {
 // rowColumns name the row in the columns layout.
 var rowColumns = []string{"row", "id", "status"}
 
+// columnNames are the keys of the columns layout, in the order of the cells.
+func (s *sink) columnNames() []string {
+	return slices.Concat(rowColumns, s.pass, answer.ColumnNames())
+}
+
+// ErrColumnsTooLarge is more columns than are put together in memory.
+var ErrColumnsTooLarge = errors.New("the columns are too large")
+
 // column parts cells and puts each behind its column.
-func (s *sink) column(b []byte) {
+func (s *sink) column(b []byte) error {
+	if s.held += int64(len(b)); s.options.MaxHeld > 0 && s.held > s.options.MaxHeld {
+		return ErrColumnsTooLarge
+	}
 	for i := 0; len(b) > 0; i++ {
 		cell, rest, _ := bytes.Cut(b, []byte{answer.CellEnd})
 		at := &s.columns[i%len(s.columns)]
@@ -95,6 +104,7 @@ func (s *sink) column(b []byte) {
 		}
 		*at, b = append(*at, cell...), rest
 	}
+	return nil
 }
 
 // appendRowCells appends the cells that name a row.
@@ -105,7 +115,11 @@ func (p *pipeline) appendRowCells(dst []byte, row *answer.Row, status string) []
 	} else {
 		dst = jsontext.AppendString(dst, row.ID)
 	}
-	return append(append(append(append(dst, answer.CellEnd), '"'), status...), '"', answer.CellEnd)
+	dst = append(append(append(append(dst, answer.CellEnd), '"'), status...), '"', answer.CellEnd)
+	for _, c := range row.Carried {
+		dst = append(jsontext.AppendString(dst, c.Text), answer.CellEnd)
+	}
+	return dst
 }
 
 // end writes what stands behind the rows.
@@ -119,7 +133,7 @@ func (s *sink) end(summary *Summary) error {
 	var tail []byte
 	if s.options.Layout == Columns {
 		tail = append(tail, `{"columns":{`...)
-		for i, name := range append(append([]string{}, rowColumns...), answer.ColumnNames()...) {
+		for i, name := range s.columnNames() {
 			if i > 0 {
 				tail = append(tail, ',')
 			}

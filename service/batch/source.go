@@ -10,7 +10,7 @@ import (
 
 // source gives the rows of a batch one by one.
 type source interface {
-	// next appends one row to the chunk, or says io.EOF.
+	// next appends one row to the chunk, or passes over a blank line, or says io.EOF.
 	next(c *chunk) error
 	// wouldWait reports whether the next row may have to be waited for.
 	wouldWait() bool
@@ -18,8 +18,11 @@ type source interface {
 	carried() []string
 }
 
+// byteOrderMark begins what some programs save as UTF-8.
+var byteOrderMark = []byte("\xef\xbb\xbf")
+
 func newSource(r io.Reader, o *Options) (source, error) {
-	buffered := bufio.NewReaderSize(r, maxRow)
+	buffered := bufio.NewReaderSize(r, maxRow+len("\r\n"))
 	switch o.In {
 	case NDJSON:
 		return &lines{in: buffered}, nil
@@ -37,41 +40,42 @@ type lines struct {
 
 func (l *lines) carried() []string { return nil }
 
-func (l *lines) wouldWait() bool { return l.in.Buffered() == 0 }
+func (l *lines) wouldWait() bool { return !wholeLine(l.in) }
+
+// wholeLine reports whether a line can be read without waiting for its end: half of
+// one may be all that a client sends before it waits for its answers.
+func wholeLine(in *bufio.Reader) bool {
+	here, _ := in.Peek(in.Buffered())
+	return bytes.IndexByte(here, '\n') >= 0
+}
 
 func (l *lines) next(c *chunk) error {
-	for {
-		line, err := l.in.ReadSlice('\n')
-		if errors.Is(err, bufio.ErrBufferFull) {
-			l.row++
-			c.requests = append(c.requests, request{number: l.row, tooLarge: true})
-			return skipLine(l.in)
-		}
-		if err != nil && !errors.Is(err, io.EOF) {
-			return err
-		}
-		if line = bytes.TrimSpace(line); len(line) > 0 {
-			l.row++
-			start := len(c.in)
-			c.in = append(c.in, line...)
-			c.requests = append(c.requests, request{start: start, end: len(c.in), number: l.row})
-			return nil
-		}
-		if err != nil {
-			return io.EOF
-		}
+	line, err := l.in.ReadSlice('\n')
+	tooLong := errors.Is(err, bufio.ErrBufferFull)
+	if tooLong {
+		err = skipLine(l.in)
 	}
+	if err != nil && !errors.Is(err, io.EOF) {
+		return err
+	}
+	switch line = bytes.TrimSpace(line); {
+	case tooLong || len(line) > maxRow:
+		l.row++
+		c.requests = append(c.requests, request{number: l.row, tooLarge: true})
+	case len(line) > 0:
+		l.row++
+		start := len(c.in)
+		c.in = append(c.in, line...)
+		c.requests = append(c.requests, request{start: start, end: len(c.in), number: l.row})
+	}
+	return err
 }
 
 // skipLine drops the rest of a line that is too long.
 func skipLine(r *bufio.Reader) error {
 	for {
 		_, err := r.ReadSlice('\n')
-		switch {
-		case errors.Is(err, bufio.ErrBufferFull):
-		case errors.Is(err, io.EOF):
-			return nil // the next read says so
-		default:
+		if !errors.Is(err, bufio.ErrBufferFull) {
 			return err
 		}
 	}
@@ -80,8 +84,9 @@ func skipLine(r *bufio.Reader) error {
 // array are the rows of a JSON array, or one lone object, read as a whole before the
 // first is answered: a syntax error at the end spoils all of it.
 type array struct {
-	rows []json.RawMessage
-	at   int
+	body []byte // known to be JSON
+	at   int    // behind the last row
+	row  int
 }
 
 func newArray(r io.Reader, most int64) (source, error) {
@@ -92,42 +97,82 @@ func newArray(r io.Reader, most int64) (source, error) {
 	if err != nil {
 		return nil, err
 	}
-	a := &array{}
-	switch trimmed := bytes.TrimLeft(body, " \t\r\n"); {
-	case len(trimmed) == 0:
-		return nil, refusal(true, "", "malformed_body", "the body is empty; send a JSON array of request documents")
-	case trimmed[0] == '[':
-		if err := json.Unmarshal(body, &a.rows); err != nil {
-			return nil, refusal(true, "", "malformed_body", "the array is no JSON: "+err.Error())
-		}
-	case trimmed[0] == '{' && json.Valid(body):
-		a.rows = []json.RawMessage{body}
-	case trimmed[0] == '{':
-		return nil, refusal(true, "", "malformed_body", "the document is no JSON; a lone object is a batch of one, many are an array, or lines sent as application/x-ndjson")
-	default:
-		return nil, refusal(false, "", "wrong_type", "a batch is a JSON array of request documents, or one document alone")
+	body = bytes.Trim(body, jsonBlanks)
+	malformed := func(detail string) (source, error) { return nil, refusal(true, "", "malformed_body", detail) }
+	switch {
+	case len(body) == 0:
+		return malformed("the body is empty; send a JSON array of request documents")
+	case bytes.HasPrefix(body, byteOrderMark):
+		return malformed("the body begins with a byte order mark; send UTF-8 without one")
+	case body[0] == '[' && !json.Valid(body):
+		return malformed("the array is no JSON: " + json.Unmarshal(body, new(json.RawMessage)).Error())
+	case body[0] == '[':
+		return &array{body: body, at: 1}, nil
+	case body[0] == '{' && json.Valid(body):
+		return &array{body: body}, nil
+	case body[0] == '{':
+		return malformed("the document is no JSON; a lone object is a batch of one, many are an array, or lines sent as application/x-ndjson")
 	}
-	return a, nil
+	return nil, refusal(false, "", "wrong_type", "a batch is a JSON array of request documents, or one document alone")
 }
 
 func (a *array) carried() []string { return nil }
 
 func (a *array) wouldWait() bool { return false }
 
+const jsonBlanks = " \t\r\n"
+
 func (a *array) next(c *chunk) error {
-	if a.at == len(a.rows) {
+	rest := bytes.TrimLeft(a.body[a.at:], jsonBlanks+",")
+	if len(rest) == 0 || rest[0] == ']' {
 		return io.EOF
 	}
-	row := a.rows[a.at]
-	a.at++
+	row := rest[:valueLength(rest)]
+	a.at = len(a.body) - len(rest) + len(row)
+	a.row++
 	if len(row) > maxRow {
-		c.requests = append(c.requests, request{number: a.at, tooLarge: true})
+		c.requests = append(c.requests, request{number: a.row, tooLarge: true})
 		return nil
 	}
 	start := len(c.in)
 	c.in = append(c.in, row...)
-	c.requests = append(c.requests, request{start: start, end: len(c.in), number: a.at})
+	c.requests = append(c.requests, request{start: start, end: len(c.in), number: a.row})
 	return nil
+}
+
+// valueLength is the length of the value that begins a text known to be JSON.
+func valueLength(text []byte) int {
+	depth := 0
+	for i := 0; i < len(text); i++ {
+		switch text[i] {
+		case '"':
+			i += stringLength(text[i:]) - 1
+		case '{', '[':
+			depth++
+		case '}', ']':
+			if depth--; depth <= 0 {
+				return i + depth + 1 // the bracket is the value's own, or that around it
+			}
+		case ',', ' ', '\t', '\r', '\n':
+			if depth == 0 {
+				return i
+			}
+		}
+	}
+	return len(text)
+}
+
+// stringLength is the length of the JSON string that begins a text, with its quotes.
+func stringLength(text []byte) int {
+	for i := 1; i < len(text); i++ {
+		switch text[i] {
+		case '\\':
+			i++
+		case '"':
+			return i + 1
+		}
+	}
+	return len(text)
 }
 
 // ErrTooLarge is a JSON array beyond its bound.

@@ -15,7 +15,7 @@ import (
 func TestSpoolKeepsTheOrder(t *testing.T) {
 	r := rand.New(rand.NewPCG(1, 2))
 	for _, late := range []bool{false, true} {
-		s := batch.NewSpool(64 << 20)
+		s := batch.NewSpool(64<<20, 0)
 		want := make([]byte, 20<<20)
 		for i := range want {
 			want[i] = byte(i*7 + i>>11)
@@ -64,7 +64,7 @@ func TestSpoolKeepsTheOrder(t *testing.T) {
 }
 
 func TestSpoolHasABound(t *testing.T) {
-	s := batch.NewSpool(1000)
+	s := batch.NewSpool(1000, 0)
 	if _, err := s.Write(make([]byte, 900)); err != nil {
 		t.Fatal(err)
 	}

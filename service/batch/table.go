@@ -42,7 +42,8 @@ func DialectNames() []string { return []string{"comma", "semicolon", "semicolon_
 
 // column is what one column of a list means.
 type column struct {
-	name    string // flat name, or of the caller's own
+	head    string // as it stands in the list
+	name    string // flat name, "" for a column of the caller's own
 	unit    string // of the header, put behind each number
 	number  bool
 	carried bool
@@ -65,27 +66,29 @@ func newTable(in *bufio.Reader, o *Options) (source, error) {
 	if t.dialect.Comma == 0 {
 		t.dialect = dialects["comma"]
 	}
-	if start, err := in.Peek(3); err == nil && bytes.Equal(start, []byte("\xef\xbb\xbf")) {
-		_, _ = in.Discard(3)
+	if start, err := in.Peek(len(byteOrderMark)); err == nil && bytes.Equal(start, byteOrderMark) {
+		_, _ = in.Discard(len(byteOrderMark)) // just peeked
 	}
-	err := t.readRecord()
-	switch {
+	malformed := func(detail string) (source, error) { return nil, refusal(true, "", "malformed_body", detail) }
+	switch err := t.readRecord(); {
 	case errors.Is(err, io.EOF):
-		return nil, refusal(true, "", "malformed_body", "the list is empty; its first line names the columns")
-	case errors.Is(err, errRecordTooLarge):
-		return nil, refusal(true, "", "malformed_body", "the first line has more than 64 kB; it should name the columns")
+		return malformed("the list is empty; its first line names the columns")
+	case errors.Is(err, errRowTooLarge):
+		return malformed("the first line has more than 64 kB; it should name the columns")
 	case err != nil:
 		return nil, err
+	case !utf8.Valid(t.record):
+		return malformed("the first line is not UTF-8; save the list as CSV in UTF-8")
 	}
 	if err := t.split(); err != nil {
-		return nil, refusal(true, "", "malformed_body", "the first line names the columns, and it "+err.Error())
+		return malformed("the first line names the columns, and it " + err.Error())
 	}
 	return t, t.header(o.Carry)
 }
 
 func (t *list) carried() []string { return t.pass }
 
-func (t *list) wouldWait() bool { return t.in.Buffered() == 0 }
+func (t *list) wouldWait() bool { return !wholeLine(t.in) }
 
 // header reads the names of the columns, and tells all that is wrong with them.
 func (t *list) header(carry []string) error {
@@ -93,32 +96,25 @@ func (t *list) header(carry []string) error {
 	refuse := func(name, code, detail string) {
 		wrong = append(wrong, document.Violation{Parameter: name, Code: code, Detail: detail})
 	}
-	all := slices.Contains(carry, carryAll)
 	seen := map[string]bool{}
 	for i, cell := range t.cells {
-		text := strings.TrimSpace(cell)
-		c, err := readColumn(text)
-		switch {
-		case slices.Contains(carry, text):
-			c = column{name: text, carried: true}
-		case err != nil && all && text != "":
-			c = column{name: text, carried: true}
-		case text == "":
+		c := column{head: strings.TrimSpace(cell)}
+		if c.head == "" {
 			refuse(fmt.Sprintf("column %d", i+1), flat.CodeBlank, "a column has no name")
-		case err != nil:
-			refuse(text, codeOf(err), err.Error())
+		} else if err := c.read(carry); err != nil {
+			refuse(c.head, codeOf(err), err.Error())
 		}
-		if seen[c.name] && c.name != "" {
-			refuse(text, flat.CodeRepeated, c.name+" stands in two columns; keep one")
+		if c.name != "" && seen[c.name] {
+			refuse(c.head, flat.CodeRepeated, c.name+" stands in two columns; keep one")
 		}
 		seen[c.name] = true
 		if c.carried {
-			t.pass = append(t.pass, c.name)
+			t.pass = append(t.pass, c.head)
 		}
 		t.columns = append(t.columns, c)
 	}
 	for _, name := range carry {
-		if name != carryAll && !seen[name] {
+		if name != carryAll && !slices.Contains(t.pass, name) {
 			refuse("carry", "unknown_value", fmt.Sprintf("the list has no column %q to carry", name))
 		}
 	}
@@ -126,6 +122,28 @@ func (t *list) header(carry []string) error {
 		return &document.Refusal{Violations: wrong}
 	}
 	return nil
+}
+
+// read reads the head of a column. One that carry names passes through, and is read as
+// well where it is a name of ours: a rise that is carried still counts.
+func (c *column) read(carry []string) error {
+	known, err := readColumn(c.head)
+	if err == nil {
+		c.name, c.unit, c.number = known.name, known.unit, known.number
+	}
+	ownByAll := err != nil && slices.Contains(carry, carryAll) && !misspelt(c.head)
+	if c.carried = slices.Contains(carry, c.head) || ownByAll; c.carried {
+		return nil
+	}
+	return err
+}
+
+// misspelt reports whether a head looks like a quantity of ours with an error in its
+// name. It is not carried by "*": a rise that is no rise would silently be none.
+func misspelt(head string) bool {
+	name, _, unit := strings.Cut(head, "[")
+	name = strings.TrimSpace(name)
+	return unit && len(name) > 3 && flat.Nearest(name) != "" // the nearest to very short names is chance
 }
 
 // columnError is a header that means nothing here.
@@ -163,22 +181,22 @@ func readColumn(text string) (column, error) {
 			return c, nil
 		}
 	}
-	detail := fmt.Sprintf("%q is no name known here", text)
-	if offer := flat.Nearest(text); offer != "" {
+	return column{}, unknownColumn(text)
+}
+
+func unknownColumn(name string) error {
+	detail := fmt.Sprintf("%q is no name known here", name)
+	if offer := flat.Nearest(name); offer != "" {
 		detail += "; did you mean " + offer + "?"
 	}
-	return column{}, &columnError{flat.CodeUnknownName, detail + " A column of your own passes through when carry names it."}
+	return &columnError{flat.CodeUnknownName, detail + " A column of your own passes through when carry names it."}
 }
 
 func withUnit(name, text string, read func(string) (units.Unit, error)) (column, error) {
 	leaf, ok := flat.Lookup(name)
 	switch {
 	case !ok:
-		detail := fmt.Sprintf("%q is no name known here", name)
-		if offer := flat.Nearest(name); offer != "" {
-			detail += "; did you mean " + offer + "?"
-		}
-		return column{}, &columnError{flat.CodeUnknownName, detail}
+		return column{}, unknownColumn(name)
 	case !leaf.Number:
 		return column{}, &columnError{"unit_not_used", name + " takes no unit; write the name alone"}
 	case text == "" || text == "-" || text == "1":
@@ -194,51 +212,44 @@ func withUnit(name, text string, read func(string) (units.Unit, error)) (column,
 	return column{name: name, unit: u.String(), number: true}, nil
 }
 
-// next reads one record and makes the document of it.
+// next reads one record and makes the document of it; an empty line is no row.
 func (t *list) next(c *chunk) error {
-	for {
-		err := t.readRecord()
-		if errors.Is(err, errRecordTooLarge) {
-			t.row++
-			c.requests = append(c.requests, request{number: t.row, tooLarge: true})
-			return nil
-		}
-		if err != nil {
-			return err
-		}
-		if len(bytes.TrimSpace(t.record)) == 0 {
-			continue // an empty line is no row
-		}
+	err := t.readRecord()
+	switch {
+	case errors.Is(err, errRowTooLarge):
 		t.row++
-		c.requests = append(c.requests, t.request(c))
+		c.requests = append(c.requests, request{number: t.row, tooLarge: true})
+		return nil
+	case err != nil:
+		return err
+	case len(bytes.Trim(t.record, " \r\n")) == 0:
 		return nil
 	}
+	t.row++
+	c.requests = append(c.requests, t.request(c))
+	return nil
 }
 
+// request makes the request of a record, with what is wrong with it as a row of a list.
 func (t *list) request(c *chunk) request {
 	r := request{number: t.row, typed: true, start: len(c.in)}
-	refuse := func(code, detail string) {
+	refuse := func(code, detail string) request {
 		r.wrong = append(r.wrong, document.Violation{Parameter: "row", Code: code, Detail: detail})
+		return r
 	}
 	if !utf8.Valid(t.record) {
-		refuse("not_utf8", "these bytes are not UTF-8; save the list as UTF-8")
-		return r
+		return refuse("not_utf8", "these bytes are not UTF-8; save the list as UTF-8")
 	}
 	if err := t.split(); err != nil {
-		refuse("malformed_row", "the row "+err.Error())
-		return r
+		return refuse("malformed_row", "the row "+err.Error())
 	}
-	if len(t.cells) > len(t.columns) {
-		refuse("malformed_row", fmt.Sprintf("the row has %d cells, the list %d columns; a comma inside a cell needs quotes around it", len(t.cells), len(t.columns)))
-		return r
+	if len(t.cells) != len(t.columns) {
+		return refuse("malformed_row", fmt.Sprintf("the row has %d cells, the list %d columns; a separator inside a cell needs quotes around it, a cell without a value stays empty",
+			len(t.cells), len(t.columns)))
 	}
 	t.pairs = t.pairs[:0]
 	for i := range t.columns {
-		text := ""
-		if i < len(t.cells) {
-			text = t.cells[i]
-		}
-		t.cell(&r, &t.columns[i], text)
+		t.cell(&r, &t.columns[i], t.cells[i])
 	}
 	var wrong []document.Violation
 	c.in, wrong = flat.AppendDocument(c.in, t.pairs, document.SegmentDoor)
@@ -250,32 +261,49 @@ func (t *list) request(c *chunk) request {
 // cell takes one cell: an empty one is not given.
 func (t *list) cell(r *request, c *column, text string) {
 	if c.carried {
-		r.carried = append(r.carried, answer.Carried{Name: c.name, Text: text})
-		return
+		r.carried = append(r.carried, answer.Carried{Name: c.head, Text: text})
 	}
-	if strings.TrimSpace(text) == "" {
+	if c.name == "" || strings.TrimSpace(text) == "" {
 		return
 	}
 	if c.name == "id" {
 		r.id = text
 	}
-	if c.number && t.dialect.DecimalComma {
-		text = strings.Replace(text, ",", ".", 1)
-	}
-	if c.unit != "" {
-		number, rest := cutNumber(text)
-		switch {
-		case rest == "" || strings.HasPrefix(rest, "±") || strings.HasPrefix(rest, "+/-"):
-			text = strings.TrimSpace(number + " " + c.unit + " " + rest)
-		case rest[0] == ',':
-			text += " " + c.unit // a decimal comma, which the reader tells
-		case number != "":
-			r.wrong = append(r.wrong, document.Violation{Parameter: c.name, Code: "unit_twice",
-				Detail: fmt.Sprintf("%q has a unit, and the head of its column gives %s; write the number alone", text, c.unit)})
+	if c.number {
+		var wrong *document.Violation
+		if text, wrong = t.number(c, text); wrong != nil {
+			wrong.Parameter = c.name
+			r.wrong = append(r.wrong, *wrong)
 			return
 		}
 	}
 	t.pairs = append(t.pairs, flat.Pair{Name: c.name, Text: text})
+}
+
+// number gives the text of a number as the reader takes it: with a point, and with the
+// unit of its column behind it.
+func (t *list) number(c *column, text string) (string, *document.Violation) {
+	if t.dialect.DecimalComma {
+		if number, _ := cutNumber(text); strings.Contains(number, ".") {
+			return "", &document.Violation{Code: "decimal_point",
+				Detail: fmt.Sprintf("%q has a point, which can mean thousands in a list with decimal commas; write 1234,5", text)}
+		}
+		text = strings.ReplaceAll(text, ",", ".")
+	}
+	if c.unit == "" {
+		return text, nil
+	}
+	number, rest := cutNumber(text)
+	switch {
+	case number == "":
+		return text, nil // no number at all, which the reader tells
+	case rest == "" || strings.HasPrefix(rest, "±") || strings.HasPrefix(rest, "+/-"):
+		return strings.TrimSpace(number + " " + c.unit + " " + rest), nil
+	case strings.IndexByte("0123456789,.'", rest[0]) >= 0:
+		return text + " " + c.unit, nil // a number in a form that the reader tells
+	}
+	return "", &document.Violation{Code: "unit_twice",
+		Detail: fmt.Sprintf("%q has a unit, and the head of its column gives %s; write the number alone", text, c.unit)}
 }
 
 // cutNumber cuts the number from the front of a cell.
