@@ -41,6 +41,16 @@ type Options struct {
 	// ValidateAlways lets kin-openapi judge every request that the strict reader
 	// accepted. It costs more than the calculation.
 	ValidateAlways bool
+	// Metrics count what is answered; nil counts nothing.
+	Metrics *Metrics
+	// Scrape answers /metrics; nil leaves that path out, for a service that shows
+	// its metrics on an address of their own.
+	Scrape http.Handler
+	// RequestLog gets one line a request; nil gets none.
+	RequestLog *slog.Logger
+	// MaxConcurrent is how many requests are answered at the same time; 0 is
+	// DefaultMaxConcurrent.
+	MaxConcurrent int
 	// BatchSpool is how many bytes of answers are kept for a client that does not
 	// read them yet; 0 is DefaultBatchSpool.
 	BatchSpool int64
@@ -63,6 +73,10 @@ type API struct {
 	document []byte // openapi.json
 	spool    int64
 	patience time.Duration
+
+	metrics    *Metrics
+	requestLog *slog.Logger
+	slots      chan struct{} // one for each request that is being answered
 }
 
 // New wires the routes. It fails only where the OpenAPI document is unusable,
@@ -89,8 +103,18 @@ func New(o Options) (*API, error) {
 	}
 	a.echo = echo.New()
 	a.echo.HTTPErrorHandler = a.fail
-	a.echo.Use(a.identify, a.recoverPanics, limitURL)
+	if o.MaxConcurrent == 0 {
+		o.MaxConcurrent = DefaultMaxConcurrent
+	}
+	a.metrics, a.requestLog, a.slots = o.Metrics, o.RequestLog, make(chan struct{}, o.MaxConcurrent)
+	if s, ok := o.Service.(interface{ Observe(service.Observer) }); ok && o.Metrics != nil {
+		s.Observe(o.Metrics.observer())
+	}
+	a.echo.Use(a.identify, a.seen, a.recoverPanics, limitURL)
 	a.routes()
+	if o.Scrape != nil {
+		a.get("/metrics", scrape(o.Scrape))
+	}
 	return a, nil
 }
 
@@ -102,10 +126,10 @@ func (a *API) routes() {
 		"/v1/friction": document.FrictionDoor,
 		"/v1/segment":  document.SegmentDoor,
 	} {
-		a.echo.POST(path, a.calculation(door))
-		a.get(path, a.question(door))
+		a.echo.POST(path, a.boundConcurrency(a.calculation(door)))
+		a.get(path, a.boundConcurrency(a.question(door)))
 	}
-	a.echo.POST("/v1/segments", a.segments)
+	a.echo.POST("/v1/segments", a.boundConcurrency(a.segments))
 	a.get("/v1/catalog", a.catalog)
 	a.get("/v1/catalog/:kind", a.catalog)
 	a.get("/v1/convert", a.convert)

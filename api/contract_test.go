@@ -141,6 +141,12 @@ func provoke(t *testing.T, o operation, status int) (*api.API, *http.Request) {
 	case 500:
 		face, _ = newFace(t, failing(errors.New("provoked")))
 	case 503:
+		if o.path != "/readyz" {
+			busy, release := busyFace(t)
+			t.Cleanup(release)
+			face = busy
+			break
+		}
 		unready, err := api.New(api.Options{Service: service.New()})
 		if err != nil {
 			t.Fatal(err)

@@ -3,6 +3,7 @@ package api_test
 import (
 	"bytes"
 	"encoding/json"
+	"fmt"
 	"io"
 	"log/slog"
 	"net/http"
@@ -63,7 +64,11 @@ var echoing = answerer{
 func newFace(t testing.TB, a api.Answerer) (*api.API, *bytes.Buffer) {
 	t.Helper()
 	var logged bytes.Buffer
-	face, err := api.New(api.Options{Service: a, Logger: jsonLog(&logged)})
+	scrape := http.HandlerFunc(func(w http.ResponseWriter, _ *http.Request) {
+		w.Header().Set("Content-Type", "text/plain; version=0.0.4")
+		fmt.Fprintln(w, "up 1")
+	})
+	face, err := api.New(api.Options{Service: a, Logger: jsonLog(&logged), Scrape: scrape})
 	if err != nil {
 		t.Fatal(err)
 	}

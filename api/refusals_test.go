@@ -20,6 +20,8 @@ func TestEveryKindOfProblem(t *testing.T) {
 	if err != nil {
 		t.Fatal(err)
 	}
+	busy, release := busyFace(t)
+	defer release()
 	provoke := map[string]struct {
 		status int
 		answer *http.Response
@@ -33,6 +35,7 @@ func TestEveryKindOfProblem(t *testing.T) {
 		"invalid_input":          {422, post(refuse(&document.Refusal{}), "/v1/segment", "{}")},
 		"calculation_failed":     {500, post(refuse(calc.ErrNoConvergence), "/v1/segment", "{}")},
 		"internal":               {500, post(refuse(errors.New("x")), "/v1/segment", "{}")},
+		"overloaded":             {503, post(busy, "/v1/segment", "{}")},
 		"not_ready":              {503, ask(unready, "GET", "/readyz", "")},
 	}
 	for _, name := range api.KindNames() {

@@ -57,7 +57,7 @@ func (s *Service) Ask(dst []byte, q *Query) (Reply, error) {
 func (d *Desk) AnswerFlat(pairs []flat.Pair, door document.Door) (*answer.Answer, error) {
 	var wrong []document.Violation
 	if d.flat, wrong = flat.AppendDocument(d.flat[:0], pairs, door); wrong != nil {
-		return nil, &document.Refusal{Violations: wrong}
+		return nil, d.service.refused(&document.Refusal{Violations: wrong})
 	}
 	a, err := d.Answer(d.flat, door, Typed)
 	return a, ByNames(err)

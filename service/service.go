@@ -29,9 +29,20 @@ var ErrCalculation = errors.New("the calculation failed on accepted input")
 
 // Service answers requests. It is safe for concurrent use.
 type Service struct {
-	engine answer.Engine
-	desks  sync.Pool // of *Desk
+	engine  answer.Engine
+	desks   sync.Pool // of *Desk
+	observe Observer
 }
+
+// Observer hears of every calculation, rows of batches included. Its functions must
+// be safe for concurrent use, keep nothing of what they are shown, and be fast.
+type Observer struct {
+	Answered func(*document.Request, *answer.Answer)
+	Refused  func(error)
+}
+
+// Observe sets the observer. Call it before the first request.
+func (s *Service) Observe(o Observer) { s.observe = o }
 
 // Desk answers one request after the other with the same memory. One goroutine
 // at a time.
@@ -57,17 +68,32 @@ const (
 // Answer reads one JSON request and answers it. The answer stands until the next
 // call. The error is a *document.Refusal where the request is to blame.
 func (d *Desk) Answer(body []byte, door document.Door, entry Entry) (*answer.Answer, error) {
+	if err := d.calculate(body, door, entry); err != nil {
+		return nil, d.service.refused(err)
+	}
+	if answered := d.service.observe.Answered; answered != nil {
+		answered(&d.work.req, &d.answer)
+	}
+	return &d.answer, nil
+}
+
+// refused tells the observer of a calculation that is not answered.
+func (s *Service) refused(err error) error {
+	if s.observe.Refused != nil {
+		s.observe.Refused(err)
+	}
+	return err
+}
+
+func (d *Desk) calculate(body []byte, door document.Door, entry Entry) error {
 	read := document.Read
 	if entry == Typed {
 		read = document.ReadTyped
 	}
 	if err := read(body, door, &d.work.req); err != nil {
-		return nil, err
+		return err
 	}
-	if err := d.service.calculate(&d.work, &d.answer); err != nil {
-		return nil, err
-	}
-	return &d.answer, nil
+	return d.service.calculate(&d.work, &d.answer)
 }
 
 // New returns a service.
