@@ -63,13 +63,15 @@ func TestMetricsCountWhatIsAnswered(t *testing.T) {
 	post(face, "/v1/segment", `{"section":{"shape":"circle"}}`)
 	ask(face, "GET", "/v1/fluid?substance=water&temperature=20+degC&pressure=2+bara", "")
 	ask(face, "GET", "/v1/segment?made=up", "")
+	batchOf(face, "/v1/segments", "application/x-ndjson", "", oneLine+"\n{\n")
+	batchOf(face, "/v1/segments", "application/json", "", oneLine)
 	ask(face, "GET", "/some/path/of/nobody", "")
 	ask(face, "BREW", "/v1/segment", "")
 	scraped := text(t, ask(face, "GET", "/metrics", ""))
 	for _, want := range []string{
-		`borewright_calculations_total{door="segment",fluid="by_properties",law="colebrook_white",regime="turbulent"} 1`,
+		`borewright_calculations_total{door="segment",fluid="by_properties",law="colebrook_white",regime="turbulent"} 3`,
 		`borewright_calculations_total{door="fluid",fluid="water",law="none",regime="none"} 1`,
-		`borewright_notes_total{code="defaults_used",level="info"} 1`,
+		`borewright_notes_total{code="defaults_used",level="info"} 3`,
 		`borewright_refusals_total{code="required"} 5`,
 		`borewright_refusals_total{code="unknown_name"} 1`,
 		`borewright_http_request_duration_seconds_count{method="POST",route="/v1/segment",status="200"} 1`,
@@ -78,6 +80,8 @@ func TestMetricsCountWhatIsAnswered(t *testing.T) {
 		`borewright_http_request_duration_seconds_count{method="other",route="/v1/segment",status="405"} 1`,
 		`borewright_http_request_duration_seconds_bucket{method="POST",route="/v1/segment",status="200",le="0.0001"}`,
 		`borewright_build_info{method_revision="1",version="0.1.0"} 1`,
+		`borewright_batch_rows_total{status="ok"} 2`,
+		`borewright_batch_rows_total{status="failed"} 1`,
 		`borewright_http_requests_in_flight 1`,
 	} {
 		if !strings.Contains(scraped, want) {

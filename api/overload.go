@@ -10,8 +10,8 @@ import (
 // more than cores, since most of a request is waiting for its client.
 const DefaultMaxConcurrent = 256
 
-// patience is how long a request waits for its turn before it is turned away.
-const patience = 500 * time.Millisecond
+// slotPatience is how long a request waits for its turn before it is turned away.
+const slotPatience = 500 * time.Millisecond
 
 // boundConcurrency turns requests away when too many are being answered, with
 // the advice to come again: work that piles up would be late for everyone.
@@ -30,7 +30,7 @@ func (a *API) boundConcurrency(next echo.HandlerFunc) echo.HandlerFunc {
 }
 
 func (a *API) waitForSlot(c echo.Context) error {
-	timer := time.NewTimer(patience)
+	timer := time.NewTimer(slotPatience)
 	defer timer.Stop()
 	select {
 	case a.slots <- struct{}{}:

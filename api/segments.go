@@ -69,6 +69,7 @@ func (a *API) wholeBatch(c echo.Context, q *batchQuery) error {
 	defer func() { _ = spool.Close() }() // read to its end, or not worth reading
 	body := a.progress(c)
 	summary, err := batch.Run(c.Request().Context(), a.service, body, spool, q.Options)
+	a.metrics.countRows(summary.OK, summary.Failed)
 	if err != nil {
 		return err
 	}
@@ -85,6 +86,7 @@ type stream struct {
 	query  *batchQuery
 	spool  *batch.Spool
 	body   *progress
+	ok     int
 	failed int
 	done   chan struct{}
 }
@@ -107,6 +109,7 @@ func (a *API) streamedBatch(c echo.Context, q *batchQuery) error {
 		_ = s.spool.Close()
 	}
 	<-s.done
+	a.metrics.countRows(s.ok, s.failed)
 	_ = s.spool.Close() // read to its end, or without a reader
 	if err != nil {
 		c.Response().Header().Del("Trailer")
@@ -120,7 +123,7 @@ func (a *API) streamedBatch(c echo.Context, q *batchQuery) error {
 func (s *stream) answer(ctx context.Context, desks batch.Desks) {
 	defer close(s.done)
 	summary, err := batch.Run(ctx, desks, s.body, s.spool, s.query.Options)
-	s.failed = summary.Failed
+	s.ok, s.failed = summary.OK, summary.Failed
 	if !errors.Is(err, batch.ErrSpoolFull) {
 		s.spool.End(err)
 		return
