@@ -152,6 +152,8 @@ func TestBadRowsStayInTheirPlace(t *testing.T) {
 		{`a,circle,"5,0",x`, "decimal_comma", "diameter", ""},
 		{`a,circle,abc,x`, "not_a_number", "diameter", ""},
 		{`a,circle,5,x,y`, "malformed_row", "row", "5 cells"},
+		{`a,circle,5`, "malformed_row", "row", "3 cells"},
+		{`a,circle,1 500,x`, "not_a_number", "diameter", ""},
 		{`a,circle,"5,x`, "malformed_row", "row", "not closed"},
 		{`a,circle,5"0,x`, "malformed_row", "row", "double it"},
 		{`a,"circle"x,5,x`, "malformed_row", "row", "behind a closing quote"},

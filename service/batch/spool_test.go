@@ -6,6 +6,7 @@ import (
 	"io"
 	"math/rand/v2"
 	"testing"
+	"time"
 
 	"borewright/service/batch"
 )
@@ -60,6 +61,88 @@ func TestSpoolKeepsTheOrder(t *testing.T) {
 		if err := s.Close(); err != nil {
 			t.Error(err)
 		}
+	}
+}
+
+// A reader who keeps behind finds everything in order, and the file goes round: it
+// never holds more than the bound.
+func TestSpoolGoesRound(t *testing.T) {
+	const most = 3 << 20
+	r := rand.New(rand.NewPCG(3, 4))
+	s := batch.NewSpool(most, time.Minute)
+	want := make([]byte, 40<<20)
+	for i := range want {
+		want[i] = byte(i*7 + i>>11)
+	}
+	written := make(chan error, 1)
+	go func() {
+		for rest := want; len(rest) > 0; {
+			n := min(len(rest), 1+r.IntN(200<<10))
+			if _, err := s.Write(rest[:n]); err != nil {
+				written <- err
+				return
+			}
+			rest = rest[n:]
+		}
+		s.WriteLast([]byte("the end"))
+		s.End(nil)
+		written <- nil
+	}()
+	var got bytes.Buffer
+	buffer := make([]byte, 64<<10)
+	largest := int64(0)
+	for {
+		part, err := s.Next(buffer)
+		if errors.Is(err, io.EOF) {
+			break
+		}
+		if err != nil {
+			t.Fatal(err)
+		}
+		got.Write(part)
+		largest = max(largest, batch.FileSize(s))
+	}
+	if err := errors.Join(<-written, s.Close()); err != nil {
+		t.Fatal(err)
+	}
+	if !bytes.Equal(got.Bytes(), append(want, "the end"...)) {
+		t.Errorf("%d bytes of %d, or another order", got.Len(), len(want)+7)
+	}
+	if largest == 0 || largest > most {
+		t.Errorf("the file grows to %d bytes, the bound is %d", largest, most)
+	}
+}
+
+// A full spool waits for a reader who reads, and is full when none does.
+func TestFullSpoolWaitsForItsReader(t *testing.T) {
+	s := batch.NewSpool(100, 50*time.Millisecond)
+	if _, err := s.Write(make([]byte, 90)); err != nil {
+		t.Fatal(err)
+	}
+	began := time.Now()
+	if _, err := s.Write(make([]byte, 90)); !errors.Is(err, batch.ErrSpoolFull) || time.Since(began) < 40*time.Millisecond {
+		t.Errorf("%v after %v", err, time.Since(began))
+	}
+	wrote := make(chan error, 1)
+	go func() {
+		_, err := s.Write(make([]byte, 90))
+		wrote <- err
+	}()
+	if _, err := s.Next(make([]byte, 100)); err != nil {
+		t.Fatal(err)
+	}
+	if err := <-wrote; err != nil {
+		t.Errorf("a reader has come: %v", err)
+	}
+	go func() {
+		_, err := s.Write(make([]byte, 90))
+		wrote <- err
+	}()
+	if err := s.Close(); err != nil {
+		t.Fatal(err)
+	}
+	if err := <-wrote; err == nil {
+		t.Error("a closed spool takes more")
 	}
 }
 
