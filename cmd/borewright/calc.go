@@ -73,14 +73,17 @@ func calculate(p *process, args []string) int {
 		defer func() { _ = file.Close() }() // only read
 		in, name = file, f.file
 	}
-	code, err := f.answer(p, bufio.NewReaderSize(in, 64<<10))
+	code, err := f.answer(p, bufio.NewReaderSize(input{in}, 64<<10))
 	var refused *document.Refusal
+	var unreadable *inputError
 	switch {
 	case errors.As(err, &refused):
 		for _, v := range refused.Violations {
 			fmt.Fprintf(p.stderr, "borewright: %s: %s\n", name, shownViolation(v))
 		}
 		return exitUsage
+	case errors.As(err, &unreadable):
+		return p.usage("calc: %v", err)
 	case errors.Is(err, service.ErrCalculation):
 		return p.fault("calc: %v", err)
 	case err != nil:
@@ -89,91 +92,138 @@ func calculate(p *process, args []string) int {
 	return code
 }
 
+// input tells what goes wrong with the input from what goes wrong with the answers.
+type input struct{ io.Reader }
+
+func (in input) Read(b []byte) (int, error) {
+	n, err := in.Reader.Read(b)
+	if err != nil && !errors.Is(err, io.EOF) {
+		err = &inputError{err}
+	}
+	return n, err
+}
+
+// inputError is an input that cannot be read.
+type inputError struct{ error }
+
+func (e *inputError) Unwrap() error { return e.error }
+
 func shownViolation(v document.Violation) string {
 	at := v.Parameter
 	if at == "" {
 		at = problem.Fragment(v.Pointer)
 	}
-	return fmt.Sprintf("%s: %s (%s)", at, v.Detail, v.Code)
+	return answer.Printable(fmt.Sprintf("%s: %s (%s)", at, v.Detail, v.Code))
 }
 
-// answer answers what stands in the file.
+// answer answers what stands in the file. Answers are written as they come: another
+// program may wait for each.
 func (f *calcFlags) answer(p *process, in *bufio.Reader) (int, error) {
+	if err := skipByteOrderMark(in); err != nil {
+		return exitUsage, err
+	}
 	form, lone, err := f.form(in)
 	if err != nil {
 		return exitUsage, err
 	}
-	o := batch.Options{In: form, BOM: f.bom, Layout: map[string]batch.Layout{"rows": batch.FlatRows, "columns": batch.Columns, "blocks": batch.Blocks}[f.layout.value]}
-	o.Dialect, _ = batch.DialectByName(f.dialect.value)
-	if f.carry != "" {
-		o.Carry = strings.Split(f.carry, ",")
-	}
-	if f.reportUnits != "" {
-		if o.Report, err = answer.ReportIn(f.reportUnits); err != nil {
-			return exitUsage, &document.Refusal{Violations: []document.Violation{{Parameter: "--report-units", Code: "unknown_value", Detail: err.Error()}}}
-		}
-	}
-	switch f.format.value {
-	case "auto":
-		if o.Out = form; p.terminal {
-			o.Out = batch.Table
-		}
-	case "table":
-		o.Out = batch.Table
-	default:
-		o.Out = map[string]batch.Format{"json": batch.JSON, "ndjson": batch.NDJSON, "csv": batch.CSV}[f.format.value]
-	}
-	out := bufio.NewWriterSize(p.stdout, 64<<10)
-	var failed bool
-	if lone && o.Out == batch.JSON {
-		failed, err = f.document(out, in, o.Report)
-	} else {
-		var s batch.Summary
-		s, err = batch.Run(context.Background(), service.New(), in, out, o)
-		failed = s.Failed > 0
-	}
+	o, err := f.options(p, form)
 	if err != nil {
 		return exitUsage, err
 	}
-	if err := out.Flush(); err != nil {
-		return exitFault, err
+	var s batch.Summary
+	if lone = lone && o.Out == batch.JSON; !lone && doors[f.door.value] != document.SegmentDoor {
+		return exitUsage, &document.Refusal{Violations: []document.Violation{{Parameter: "--door", Code: "unknown_value", Detail: "rows are whole segments; another door answers one document, as JSON"}}}
 	}
-	if failed {
+	if lone {
+		s, err = f.document(p.stdout, in, o.Report)
+	} else {
+		s, err = batch.Run(context.Background(), service.New(), in, p.stdout, o)
+	}
+	switch {
+	case err != nil:
+		return exitUsage, err
+	case s.Faults > 0:
+		return exitFault, nil
+	case s.Failed > 0:
 		return exitFindings, nil
 	}
 	return exitOK, nil
 }
 
-// document answers one request document as its door does. A refused one is
-// answered by its problem.
-func (f *calcFlags) document(out io.Writer, in io.Reader, r *answer.Report) (failed bool, err error) {
-	body, err := io.ReadAll(in)
-	if err != nil {
-		return true, err
+var (
+	formats = map[string]batch.Format{"json": batch.JSON, "ndjson": batch.NDJSON, "csv": batch.CSV, "table": batch.Table}
+	layouts = map[string]batch.Layout{"rows": batch.FlatRows, "columns": batch.Columns, "blocks": batch.Blocks}
+)
+
+// options are those of the batch for an input of the form.
+func (f *calcFlags) options(p *process, form batch.Format) (batch.Options, error) {
+	o := batch.Options{In: form, Out: form, Layout: layouts[f.layout.value], BOM: f.bom, OnFault: p.rowFault}
+	o.Dialect, _ = batch.DialectByName(f.dialect.value) // the flag takes no other
+	switch {
+	case f.format.value != "auto":
+		o.Out = formats[f.format.value]
+	case p.terminal:
+		o.Out = batch.Table
 	}
-	doors := map[string]document.Door{"section": document.SectionDoor, "fluid": document.FluidDoor, "regime": document.RegimeDoor, "friction": document.FrictionDoor, "segment": document.SegmentDoor}
-	answered, err := service.New().AnswerIn(nil, body, doors[f.door.value], r)
-	var refused *document.Refusal
-	if errors.As(err, &refused) {
-		if refused.Malformed {
-			return true, err
+	if f.carry != "" {
+		for name := range strings.SplitSeq(f.carry, ",") {
+			o.Carry = append(o.Carry, strings.TrimSpace(name))
 		}
-		answered, failed = problem.AppendJSON(nil, problem.InvalidInput, refused.Violations), true
-	} else if err != nil {
-		return true, err
 	}
-	_, err = out.Write(append(answered, '\n'))
-	return failed, err
+	if f.reportUnits == "" {
+		return o, nil
+	}
+	var err error
+	if o.Report, err = answer.ReportIn(f.reportUnits); err != nil {
+		return o, &document.Refusal{Violations: []document.Violation{{Parameter: "--report-units", Code: "unknown_value", Detail: err.Error()}}}
+	}
+	return o, nil
 }
 
-// form tells the form of the input, and whether it is one document alone.
-func (f *calcFlags) form(in *bufio.Reader) (form batch.Format, lone bool, err error) {
-	first, err := in.Peek(64 << 10)
-	if err != nil && !errors.Is(err, io.EOF) && !errors.Is(err, bufio.ErrBufferFull) {
-		return 0, false, err
+// skipByteOrderMark passes over what some editors put before a file that people save.
+func skipByteOrderMark(in *bufio.Reader) error {
+	start, err := in.Peek(len(batch.ByteOrderMark))
+	if string(start) == batch.ByteOrderMark {
+		_, err = in.Discard(len(start))
 	}
-	first = bytes.TrimLeft(first, " \t\r\n")
-	object := bytes.HasPrefix(first, []byte("{"))
+	if errors.Is(err, io.EOF) {
+		return nil // a short file
+	}
+	return err
+}
+
+// rowFault tells of a row that failed by our fault.
+func (p *process) rowFault(row int, err error) {
+	_ = p.fault("calc: row %d: %v", row, err) // the exit code is that of the whole batch
+}
+
+// doors by the names that callers give.
+var doors = map[string]document.Door{"section": document.SectionDoor, "fluid": document.FluidDoor, "regime": document.RegimeDoor, "friction": document.FrictionDoor, "segment": document.SegmentDoor}
+
+// document answers one request document as its door does. A refused one is
+// answered by its problem.
+func (f *calcFlags) document(out io.Writer, in io.Reader, r *answer.Report) (batch.Summary, error) {
+	body, err := io.ReadAll(in)
+	if err != nil {
+		return batch.Summary{}, err
+	}
+	s := batch.Summary{Total: 1, OK: 1}
+	answered, err := service.New().AnswerIn(nil, body, doors[f.door.value], r)
+	var refused *document.Refusal
+	if errors.As(err, &refused) && !refused.Malformed {
+		answered, err = problem.AppendJSON(nil, problem.InvalidInput, refused.Violations), nil
+		s = batch.Summary{Total: 1, Failed: 1}
+	}
+	if err != nil {
+		return s, err
+	}
+	_, err = out.Write(append(answered, '\n'))
+	return s, err
+}
+
+// form tells the form of the input, and whether it is one document alone. It looks
+// into the input only where it must, since the rest of it may be long in coming.
+func (f *calcFlags) form(in *bufio.Reader) (form batch.Format, lone bool, err error) {
 	name := f.from.value
 	if name == "auto" {
 		name = strings.TrimPrefix(strings.ToLower(filepath.Ext(f.file)), ".")
@@ -183,13 +233,19 @@ func (f *calcFlags) form(in *bufio.Reader) (form batch.Format, lone bool, err er
 		return batch.CSV, false, nil
 	case "ndjson", "jsonl":
 		return batch.NDJSON, false, nil
-	case "json":
-		return batch.JSON, object, nil
 	}
-	switch line, rest, more := bytes.Cut(first, []byte("\n")); {
+	first, err := in.Peek(in.Size())
+	if err != nil && !errors.Is(err, io.EOF) {
+		return 0, false, err
+	}
+	first = bytes.TrimLeft(first, " \t\r\n")
+	object := bytes.HasPrefix(first, []byte("{"))
+	switch line, rest, _ := bytes.Cut(first, []byte("\n")); {
+	case name == "json":
+		return batch.JSON, object, nil
 	case bytes.HasPrefix(first, []byte("[")):
 		return batch.JSON, false, nil
-	case object && more && json.Valid(line) && len(bytes.TrimSpace(rest)) > 0:
+	case object && json.Valid(line) && len(bytes.TrimSpace(rest)) > 0:
 		return batch.NDJSON, false, nil
 	case object:
 		return batch.JSON, true, nil

@@ -2,12 +2,16 @@ package main
 
 import (
 	"encoding/json"
+	"io"
 	"net/http"
 	"net/http/httptest"
 	"os"
 	"path/filepath"
 	"strings"
+	"syscall"
 	"testing"
+	"testing/iotest"
+	"time"
 )
 
 const (
@@ -41,6 +45,9 @@ func TestCalcAnswersInTheFormOfTheInput(t *testing.T) {
 		{"a list as JSON", lineList, []string{"--carry=*", "--format=json", "--layout=columns"}, exitOK, `{"columns":{"row":[1]`},
 		{"a list as a table", lineList, []string{"--carry=*", "--format=table"}, exitOK, "row  id"},
 		{"in plant units", lineDocument, []string{"--report-units", "plant"}, exitOK, `{"id":"A","section":{"flow_area":0.00785398163397448`},
+		{"a document behind a byte order mark", "\xef\xbb\xbf" + lineDocument, nil, exitOK, `{"id":"A","section":{`},
+		{"lines behind a byte order mark", "\xef\xbb\xbf" + lineDocument + "\n" + lineDocument, nil, exitOK, `{"row":1,"id":"A","status":"ok"`},
+		{"a list behind a byte order mark", "\xef\xbb\xbf" + lineList, []string{"--carry= note "}, exitOK, "row,id,status,note,"},
 		{"a refused document", strings.Replace(lineDocument, "100 mm", "-1 mm", 1), nil, exitFindings, `{"type":"/problems/invalid_input"`},
 		{"a refused row", strings.Replace(lineList, "100,998", "-1,998", 1), []string{"--carry=*"}, exitFindings, "row,id,status"},
 	} {
@@ -62,10 +69,13 @@ func TestCalcTellsWhatItCannotUse(t *testing.T) {
 		{"a file that is not there", "", []string{"no-such-file.csv"}, "no-such-file.csv"},
 		{"a flag that is none", "", []string{"-", "--fromat=csv"}, "fromat"},
 		{"a form that is none", "", []string{"-", "--format=xml"}, "json or ndjson"},
+		{"a folder", "", []string{"."}, "directory"},
 		{"nothing", "", []string{"-"}, "the list is empty"},
+		{"a head that writes to the terminal", "col\x1b[31mour\nred\n", []string{"-"}, "col[31mour"},
 		{"half a document", `{"section":`, []string{"-"}, "malformed_body"},
 		{"a column that means nothing", "colour\nred\n", []string{"-"}, "colour: \"colour\" is no name known here"},
 		{"units that are none", lineDocument, []string{"-", "--report-units=metric"}, "--report-units"},
+		{"rows of sections", "[" + lineDocument + "]", []string{"-", "--door=section"}, "--door"},
 		{"columns of lines", lineDocument, []string{"-", "--from=ndjson", "--layout=columns"}, "layout"},
 	} {
 		code, out, errs := runCommand(t, c.in, false, append([]string{"calc"}, c.args...)...)
@@ -124,5 +134,62 @@ func TestHealthcheck(t *testing.T) {
 	}
 	if code, _, _ := runCommand(t, "", false, "healthcheck", "--listen", "nowhere"); code != exitUsage {
 		t.Errorf("no address: exit %d", code)
+	}
+}
+
+// brokenWriter is an output that takes nothing.
+type brokenWriter struct{}
+
+func (brokenWriter) Write([]byte) (int, error) { return 0, os.ErrClosed }
+
+// Input that cannot be read is the caller's affair, answers that cannot be written ours.
+func TestCalcTellsReadingFromWriting(t *testing.T) {
+	for _, c := range []struct {
+		name string
+		in   io.Reader
+		out  io.Writer
+		code int
+	}{
+		{"reads and writes", strings.NewReader(lineDocument), io.Discard, exitOK},
+		{"cannot read", iotest.ErrReader(os.ErrPermission), io.Discard, exitUsage},
+		{"cannot read to the end", io.MultiReader(strings.NewReader(strings.Repeat(lineDocument+"\n", 1000)), iotest.ErrReader(os.ErrPermission)), io.Discard, exitUsage},
+		{"cannot write", strings.NewReader(lineDocument), brokenWriter{}, exitFault},
+	} {
+		var errs strings.Builder
+		p := &process{stdin: c.in, stdout: c.out, stderr: &errs, getenv: func(string) string { return "" }}
+		if code := dispatch(p, []string{"calc", "-"}); code != c.code || (errs.Len() > 0) != (code != exitOK) {
+			t.Errorf("%s: exit %d %s", c.name, code, errs.String())
+		}
+	}
+}
+
+// A person who waits for a file that does not come can stop waiting.
+func TestCalcIsStoppedBySignals(t *testing.T) {
+	cmd := program(t, nil, "calc", "-", "--from=ndjson")
+	in, err := cmd.StdinPipe()
+	if err != nil {
+		t.Fatal(err)
+	}
+	out, err := cmd.StdoutPipe()
+	if err != nil {
+		t.Fatal(err)
+	}
+	if err := cmd.Start(); err != nil {
+		t.Fatal(err)
+	}
+	timer := time.AfterFunc(10*time.Second, func() { _ = cmd.Process.Kill() })
+	defer timer.Stop()
+	if _, err := io.WriteString(in, strings.Repeat(lineDocument+"\n", 100)); err != nil {
+		t.Fatal(err)
+	}
+	if _, err := out.Read(make([]byte, 1)); err != nil { // it has begun
+		t.Fatal(err)
+	}
+	if err := cmd.Process.Signal(os.Interrupt); err != nil {
+		t.Fatal(err)
+	}
+	_ = cmd.Wait() // says that it was stopped
+	if status, ok := cmd.ProcessState.Sys().(syscall.WaitStatus); !ok || status.Signal() != os.Interrupt {
+		t.Errorf("ended by %v", cmd.ProcessState)
 	}
 }

@@ -24,7 +24,9 @@ type process struct {
 	stdout, stderr io.Writer
 	terminal       bool // a person reads stdout
 	getenv         func(string) string
-	signals        <-chan os.Signal
+	// signals is asked for by a command that stops in good order; the others are
+	// stopped by the signal itself.
+	signals func() <-chan os.Signal
 }
 
 // command is one word behind borewright.
@@ -45,11 +47,16 @@ func commands() []command {
 }
 
 func main() {
-	// Two places: a second signal must be seen while the first is being served.
+	p := &process{stdin: os.Stdin, stdout: os.Stdout, stderr: os.Stderr, terminal: isTerminal(os.Stdout), getenv: os.Getenv, signals: stopSignals}
+	os.Exit(dispatch(p, os.Args[1:]))
+}
+
+// stopSignals are the signals by which people and supervisors stop a process. Two
+// places: a second one must be seen while the first is being served.
+func stopSignals() <-chan os.Signal {
 	signals := make(chan os.Signal, 2)
 	signal.Notify(signals, os.Interrupt, syscall.SIGTERM)
-	p := &process{stdin: os.Stdin, stdout: os.Stdout, stderr: os.Stderr, terminal: isTerminal(os.Stdout), getenv: os.Getenv, signals: signals}
-	os.Exit(dispatch(p, os.Args[1:]))
+	return signals
 }
 
 // isTerminal reports whether a file is one that people look at.

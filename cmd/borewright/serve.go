@@ -75,7 +75,7 @@ func serve(p *process, args []string) int {
 	if err != nil {
 		return p.fault("serve: cannot listen on %s: %v; another --listen address may be free, port 0 always is", f.listen, err)
 	}
-	l := &lifecycle{face: face, server: api.Server(face, log), log: log, signals: p.signals, flags: f}
+	l := &lifecycle{face: face, server: api.Server(face, log), log: log, signals: p.signals(), flags: f}
 	// The address is open, so whoever reads of it may ask at once.
 	face.Ready()
 	welcome(p, listener.Addr().(*net.TCPAddr))

@@ -57,7 +57,7 @@ func (w *Rows) AppendTable(dst []byte, row *Row, a *Answer) ([]byte, error) {
 	}
 	for i := range a.Notes {
 		n := &a.Notes[i]
-		dst = append(append(append(append(append(append(dst, noteStart), n.Level.String()...), ' '), n.Code...), ": "...), n.Text...)
+		dst = append(append(append(append(append(append(dst, noteStart), n.Level.String()...), ' '), n.Code...), ": "...), Printable(n.Text)...)
 	}
 	return append(dst, rowEnd), nil
 }
@@ -71,7 +71,7 @@ func (w *Rows) AppendFailedTable(dst []byte, row *Row, k *problem.Kind, violatio
 		if at == "" {
 			at = problem.Fragment(v.Pointer)
 		}
-		dst = append(append(append(append(append(append(append(dst, noteStart), "problem "...), v.Code...), " at "...), at...), ": "...), v.Detail...)
+		dst = append(append(append(dst, noteStart), "problem "...), Printable(v.Code+" at "+at+": "+v.Detail)...)
 	}
 	if len(violations) == 0 {
 		dst = append(append(append(dst, noteStart), "problem "...), k.Title...)
@@ -81,11 +81,11 @@ func (w *Rows) AppendFailedTable(dst []byte, row *Row, k *problem.Kind, violatio
 
 func (r *Row) appendTableHead(dst []byte) []byte {
 	dst = append(strconv.AppendInt(dst, int64(r.Number), 10), CellEnd)
-	return append(dst, clean(r.ID)...)
+	return append(dst, Printable(r.ID)...)
 }
 
-// clean takes control characters out of a text that goes to a terminal.
-func clean(s string) string {
+// Printable takes control characters out of a text that goes to a terminal.
+func Printable(s string) string {
 	return strings.Map(func(r rune) rune {
 		if r < 0x20 || r >= 0x7f && r < 0xa0 {
 			return -1
@@ -132,7 +132,7 @@ func (t *TableText) Add(b []byte) {
 			name = cells[1]
 		}
 		for _, n := range parts[1:] {
-			t.note(clean(n), name)
+			t.note(n, name)
 		}
 	}
 }

@@ -46,7 +46,7 @@ func (s *sink) begin() error {
 	case s.options.Out == CSV:
 		var head []byte
 		if s.options.BOM {
-			head = append(head, byteOrderMark...)
+			head = append(head, ByteOrderMark...)
 		}
 		return s.put(s.rows.AppendCSVHeader(head, s.pass))
 	case s.options.Out == JSON && s.options.Layout == Columns:

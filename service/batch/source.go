@@ -18,8 +18,8 @@ type source interface {
 	carried() []string
 }
 
-// byteOrderMark begins what some programs save as UTF-8.
-var byteOrderMark = []byte("\xef\xbb\xbf")
+// ByteOrderMark begins what some programs save as UTF-8.
+const ByteOrderMark = "\xef\xbb\xbf"
 
 func newSource(r io.Reader, o *Options) (source, error) {
 	buffered := bufio.NewReaderSize(r, maxRow+len("\r\n"))
@@ -102,7 +102,7 @@ func newArray(r io.Reader, most int64) (source, error) {
 	switch {
 	case len(body) == 0:
 		return malformed("the body is empty; send a JSON array of request documents")
-	case bytes.HasPrefix(body, byteOrderMark):
+	case bytes.HasPrefix(body, []byte(ByteOrderMark)):
 		return malformed("the body begins with a byte order mark; send UTF-8 without one")
 	case body[0] == '[' && !json.Valid(body):
 		return malformed("the array is no JSON: " + json.Unmarshal(body, new(json.RawMessage)).Error())

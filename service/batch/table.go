@@ -66,8 +66,8 @@ func newTable(in *bufio.Reader, o *Options) (source, error) {
 	if t.dialect.Comma == 0 {
 		t.dialect = dialects["comma"]
 	}
-	if start, err := in.Peek(len(byteOrderMark)); err == nil && bytes.Equal(start, byteOrderMark) {
-		_, _ = in.Discard(len(byteOrderMark)) // just peeked
+	if start, err := in.Peek(len(ByteOrderMark)); err == nil && string(start) == ByteOrderMark {
+		_, _ = in.Discard(len(start)) // just peeked
 	}
 	malformed := func(detail string) (source, error) { return nil, refusal(true, "", "malformed_body", detail) }
 	switch err := t.readRecord(); {
@@ -185,11 +185,11 @@ func readColumn(text string) (column, error) {
 }
 
 func unknownColumn(name string) error {
-	detail := fmt.Sprintf("%q is no name known here", name)
+	detail := fmt.Sprintf("%q is no name known here; ", name)
 	if offer := flat.Nearest(name); offer != "" {
-		detail += "; did you mean " + offer + "?"
+		detail += "did you mean " + offer + "? "
 	}
-	return &columnError{flat.CodeUnknownName, detail + " A column of your own passes through when carry names it."}
+	return &columnError{flat.CodeUnknownName, detail + "a column of your own passes through when carry names it"}
 }
 
 func withUnit(name, text string, read func(string) (units.Unit, error)) (column, error) {
