@@ -17,6 +17,10 @@ import (
 var ownData = map[string]string{
 	"testdata/demo/line_list.csv":         "the line list of the invented plant",
 	"testdata/demo/line_list_answers.csv": "what the command answers to it",
+	"testdata/batch/list.csv":             "invented segments, good and bad",
+	"testdata/batch/rows.csv":             "what a batch answers to them",
+	"testdata/batch/rows_plant.csv":       "the same in plant units",
+	"testdata/batch/documents_commas.csv": "what a batch answers to documents, with decimal commas",
 }
 
 // sourceFaults wants a source in every row of every CSV file of the tree.

@@ -4,6 +4,7 @@ package batch
 
 import (
 	"context"
+	"errors"
 	"fmt"
 	"io"
 	"runtime"
@@ -172,7 +173,7 @@ func (p *pipeline) tryRow(d *service.Desk, c *chunk, r *request, row *answer.Row
 	switch {
 	case r.tooLarge:
 		return true, errRowTooLarge
-	case r.wrong != nil:
+	case r.start == r.end && r.wrong != nil:
 		return true, &document.Refusal{Violations: r.wrong}
 	}
 	entry := service.Posted
@@ -186,18 +187,36 @@ func (p *pipeline) tryRow(d *service.Desk, c *chunk, r *request, row *answer.Row
 	if p.options.In != CSV {
 		row.Carried = p.options.tags(d.Tags())
 	}
+	if r.typed {
+		err = r.allFaults(service.ByNames(err))
+	}
 	if err == nil {
 		c.out, err = p.appendAnswer(c.out, row, a)
 	}
 	return true, err
 }
 
+// allFaults puts what the reader refuses behind what already stands against the row. A
+// cell that stands there already is not told twice.
+func (r *request) allFaults(err error) error {
+	var read *document.Refusal
+	if r.wrong == nil || err != nil && !errors.As(err, &read) {
+		return err
+	}
+	all := &document.Refusal{Violations: r.wrong}
+	if read != nil {
+		for _, v := range read.Violations {
+			if !slices.ContainsFunc(r.wrong, func(o document.Violation) bool { return o.Parameter == v.Parameter }) {
+				all.Violations = append(all.Violations, v)
+			}
+		}
+	}
+	return all
+}
+
 // fail writes the problem of a row in its place and counts it.
 func (p *pipeline) fail(c *chunk, r *request, row *answer.Row, err error) {
 	kind, violations := explain(err)
-	if r.typed && r.wrong == nil {
-		violations = byNames(violations)
-	}
 	if kind == problem.CalculationFailed {
 		c.faults++
 		if p.options.OnFault != nil {

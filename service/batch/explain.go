@@ -4,7 +4,6 @@ import (
 	"errors"
 	"strconv"
 
-	"borewright/service"
 	"borewright/service/answer"
 	"borewright/service/document"
 	"borewright/service/problem"
@@ -26,14 +25,6 @@ func explain(err error) (*problem.Kind, []document.Violation) {
 		return problem.InvalidInput, r.Violations
 	}
 	return problem.CalculationFailed, []document.Violation{{Code: problem.CalculationFailed.Name, Detail: "this is a fault of the service and not of the row; report it with the row"}}
-}
-
-func byNames(violations []document.Violation) []document.Violation {
-	var r *document.Refusal
-	if errors.As(service.ByNames(&document.Refusal{Violations: violations}), &r) {
-		return r.Violations
-	}
-	return violations
 }
 
 // inBatch points at a row of the batch.

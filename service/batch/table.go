@@ -232,7 +232,7 @@ func (t *list) next(c *chunk) error {
 
 // request makes the request of a record, with what is wrong with it as a row of a list.
 func (t *list) request(c *chunk) request {
-	r := request{number: t.row, typed: true, start: len(c.in)}
+	r := request{number: t.row, typed: true, start: len(c.in), end: len(c.in)}
 	refuse := func(code, detail string) request {
 		r.wrong = append(r.wrong, document.Violation{Parameter: "row", Code: code, Detail: detail})
 		return r
@@ -274,18 +274,18 @@ func (t *list) cell(r *request, c *column, text string) {
 		if text, wrong = t.number(c, text); wrong != nil {
 			wrong.Parameter = c.name
 			r.wrong = append(r.wrong, *wrong)
-			return
 		}
 	}
 	t.pairs = append(t.pairs, flat.Pair{Name: c.name, Text: text})
 }
 
 // number gives the text of a number as the reader takes it: with a point, and with the
-// unit of its column behind it.
+// unit of its column behind it. What is wrong with it keeps a text that the reader can
+// pass over on its way to the faults of other cells.
 func (t *list) number(c *column, text string) (string, *document.Violation) {
 	if t.dialect.DecimalComma {
 		if number, _ := cutNumber(text); strings.Contains(number, ".") {
-			return "", &document.Violation{Code: "decimal_point",
+			return text, &document.Violation{Code: "decimal_point",
 				Detail: fmt.Sprintf("%q has a point, which can mean thousands in a list with decimal commas; write 1234,5", text)}
 		}
 		text = strings.ReplaceAll(text, ",", ".")
@@ -302,7 +302,7 @@ func (t *list) number(c *column, text string) (string, *document.Violation) {
 	case strings.IndexByte("0123456789,.'", rest[0]) >= 0:
 		return text + " " + c.unit, nil // a number in a form that the reader tells
 	}
-	return "", &document.Violation{Code: "unit_twice",
+	return text, &document.Violation{Code: "unit_twice",
 		Detail: fmt.Sprintf("%q has a unit, and the head of its column gives %s; write the number alone", text, c.unit)}
 }
 
