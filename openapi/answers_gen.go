@@ -877,7 +877,7 @@ type AnsweredSection struct {
 // Example: [0.94]
 type BatchColumn = []interface{}
 
-// BatchColumns One array for each leaf, and row, id, status, notes, fingerprint and problem; all of the same length.
+// BatchColumns One array for each leaf, and row, id, status, what is carried, notes, fingerprint and problem; all of the same length.
 //
 // Example: {"id":["CHW-101"],"row":[1],"velocity":[0.94]}
 type BatchColumns map[string]BatchColumn
@@ -942,7 +942,7 @@ type BlocksRow struct {
 	Status RowStatus `json:"status"`
 }
 
-// CSVDialect How the cells of a CSV are parted and its decimals written, in and out.
+// CSVDialect How the cells of a CSV are parted and its decimals written, in and out. With decimal commas a number with a point is refused, since it may mean thousands.
 //
 // Example: comma
 type CSVDialect string
@@ -952,7 +952,7 @@ type CSVDialect string
 // Example: {"from":"P-3","to":"E-12"}
 type CarriedCells map[string]CarriedText
 
-// CarriedNames Names of columns or tags, parted by commas, or * for all columns that are no names of this service.
+// CarriedNames Names of columns or tags, parted by commas, or * for all columns that are no names of this service. A column of this service that is named is read as well. Under one head (CSV, columns) a carried name must not be one of the answer's own.
 //
 // Example: from,to,remark
 type CarriedNames = string

@@ -29,14 +29,19 @@ func (o *Options) checkCarried(pass []string) error {
 	refuse := func(name, detail string) {
 		wrong = append(wrong, document.Violation{Parameter: "carry", Code: "repeated_name", Detail: fmt.Sprintf("%q ", name) + detail})
 	}
-	taken := o.answerNames()
-	for i, name := range pass {
-		switch {
-		case slices.Contains(pass[:i], name):
+	const ours, carried = 1, 2
+	taken := map[string]int{}
+	for _, name := range o.answerNames() {
+		taken[name] = ours
+	}
+	for _, name := range pass {
+		switch taken[name] {
+		case carried:
 			refuse(name, "is carried twice; name it once")
-		case slices.Contains(taken, name):
+		case ours:
 			refuse(name, "is a column of the answer itself; give the one that is carried another name")
 		}
+		taken[name] = carried
 	}
 	if wrong != nil {
 		return &document.Refusal{Violations: wrong}
