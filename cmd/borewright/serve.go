@@ -19,8 +19,11 @@ import (
 // serveFlags are what an operator can say about serve.
 type serveFlags struct {
 	listen        string
+	adminListen   string
 	auth          choice
 	validate      choice
+	logRequests   choice
+	maxConcurrent int
 	batchSpool    int64
 	shutdownGrace time.Duration
 	drainDelay    time.Duration
@@ -31,18 +34,31 @@ const defaultListen = "127.0.0.1:8080"
 
 func readServeFlags(p *process, args []string) (*serveFlags, error) {
 	f := &serveFlags{
-		auth:     choice{"", []string{"off"}},
-		validate: choice{"never", []string{"never", "always"}},
+		auth:        choice{"", []string{"off"}},
+		validate:    choice{"never", []string{"never", "always"}},
+		logRequests: choice{"on", []string{"on", "off"}},
 	}
 	fs := flag.NewFlagSet("serve", flag.ContinueOnError)
 	fs.StringVar(&f.listen, "listen", defaultListen, "address to listen on, host:port; port 0 takes a free one")
+	fs.StringVar(&f.adminListen, "admin-listen", "", "address for /metrics and profiling, host:port; they are then not on the other one")
+	fs.Var(&f.logRequests, "log-requests", "on or off: one line of JSON a request on stderr")
+	fs.IntVar(&f.maxConcurrent, "max-concurrent", api.DefaultMaxConcurrent, "how many requests are answered at the same time; others wait for half a second and are then turned away")
 	fs.Var(&f.auth, "auth", "off: answer whoever reaches the address. Must be said when the address is not loopback")
 	fs.Var(&f.validate, "validate", "never or always: let the OpenAPI validator judge every request beside the strict reader")
 	fs.Int64Var(&f.batchSpool, "batch-spool", api.DefaultBatchSpool, "bytes of answers kept for each client of a batch that does not read them yet, in a temporary file")
 	fs.DurationVar(&f.shutdownGrace, "shutdown-grace", 15*time.Second, "how long requests may still run after the drain delay")
 	fs.DurationVar(&f.drainDelay, "drain-delay", 500*time.Millisecond, "how long to answer on after a stop signal, not ready any more, so that a load balancer can look elsewhere")
-	if err := parseFlags(p, fs, args); err != nil {
+	show := fs.Bool("print-config", false, "print each setting with where it came from, and end")
+	from, err := parseServer(p, fs, args)
+	if err != nil {
 		return nil, err
+	}
+	if *show {
+		printConfig(p, fs, from)
+		return nil, errHelp
+	}
+	if f.maxConcurrent < 1 {
+		return nil, errors.New("--max-concurrent must be at least 1")
 	}
 	if f.batchSpool < 1<<20 {
 		return nil, errors.New("--batch-spool must be at least 1048576 bytes")
@@ -67,10 +83,26 @@ func serve(p *process, args []string) int {
 		return p.usage("serve: %v", err)
 	}
 	log := slog.New(slog.NewJSONHandler(p.stderr, nil))
-	face, err := api.New(api.Options{Service: service.New(), Logger: log, ValidateAlways: f.validate.value == "always", BatchSpool: f.batchSpool})
+	registry := newRegistry()
+	o := api.Options{
+		Service: service.New(), Logger: log, ValidateAlways: f.validate.value == "always",
+		Metrics: api.NewMetrics(registry), MaxConcurrent: f.maxConcurrent, BatchSpool: f.batchSpool,
+	}
+	if f.logRequests.value == "on" {
+		o.RequestLog = log
+	}
+	if f.adminListen == "" {
+		o.Scrape = scrapeHandler(registry)
+	}
+	face, err := api.New(o)
 	if err != nil {
 		return p.fault("serve: %v", err)
 	}
+	stopAdmin, err := serveAdmin(f, registry, log)
+	if err != nil {
+		return p.usage("serve: %v", err)
+	}
+	defer stopAdmin()
 	listener, err := net.ListenTCP("tcp", addr)
 	if err != nil {
 		return p.fault("serve: cannot listen on %s: %v; another --listen address may be free, port 0 always is", f.listen, err)
@@ -94,13 +126,17 @@ func (p *process) fault(format string, args ...any) int {
 // listenAddress resolves --listen once, so that what has been checked is what
 // will be listened on, and refuses to open an address to others unasked.
 func listenAddress(f *serveFlags) (*net.TCPAddr, error) {
-	addr, err := net.ResolveTCPAddr("tcp", f.listen)
+	return openAddress(f, "listen", f.listen)
+}
+
+func openAddress(f *serveFlags, name, listen string) (*net.TCPAddr, error) {
+	addr, err := net.ResolveTCPAddr("tcp", listen)
 	if err != nil {
-		return nil, fmt.Errorf("--listen %s is no address: %w", f.listen, err)
+		return nil, fmt.Errorf("--%s %s is no address: %w", name, listen, err)
 	}
 	if !addr.IP.IsLoopback() && f.auth.value != "off" {
 		return nil, fmt.Errorf("refuses to start: %s can be reached from other machines, and this release asks nobody for a key. "+
-			"Listen on a loopback address, or say --auth=off if everyone who can reach it may use it", f.listen)
+			"Listen on a loopback address, or say --auth=off if everyone who can reach it may use it", listen)
 	}
 	return addr, nil
 }

@@ -30,6 +30,7 @@ var arrows = []arrow{
 	{"api", []string{"github.com/prometheus/client_golang"}, "requests are counted where they arrive"},
 	{"openapi", []string{"borewright/openapi", "go.yaml.in/yaml/v3"}, "the contract is data: YAML in, JSON out"},
 	{"cmd", []string{"borewright"}, "the command wires everything"},
+	{"cmd", []string{"go.yaml.in/yaml/v3"}, "the settings file, read as nodes so that a fault names its line"},
 	{"cmd", []string{"github.com/prometheus/client_golang"}, "the command owns the metrics registry and injects it"},
 }
 
