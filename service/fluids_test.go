@@ -128,7 +128,7 @@ func TestGaugesOfAGas(t *testing.T) {
 	if got := leaf(a, "pressure", "gauge_pressure_drop"); math.Abs(got-want) > 1e-9 {
 		t.Errorf("gauges show %v, want %v", got, want)
 	}
-	if notes := notesOf(a); len(notes) != 0 {
+	if notes := notesOf(a); len(notes) != 1 || noted(a, "gas_displaces_air") == nil {
 		t.Errorf("a line that says all earns %v", notes)
 	}
 	if a["pressure"].(object)["gas_model"] != "isothermal" || leaf(a, "pressure", "mach_number_out") <= leaf(a, "pressure", "mach_number_in") {

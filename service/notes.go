@@ -80,6 +80,7 @@ func (w *work) notes(out *answer.Answer) {
 		w.gas(out)
 		w.zeroRoughness(out)
 	}
+	w.cautions(out)
 	w.oddities(out)
 	if w.req.Door != document.SectionDoor {
 		w.defaultsUsed(out)
