@@ -19,7 +19,9 @@ func TestCellsAreCarriedUnchanged(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		name := rapid.SampledFrom(batch.DialectNames()).Draw(t, "dialect")
 		dialect, _ := batch.DialectByName(name)
-		text := rapid.OneOf(rapid.String(), rapid.StringOf(rapid.SampledFrom([]rune("a\",;\t\n\r'=+-@|1. é")))).Filter(utf8.ValidString)
+		text := rapid.OneOf(rapid.String(), rapid.StringOf(rapid.SampledFrom([]rune("a\",;\t\n\r'=+-@|1. é")))).Filter(func(s string) bool {
+			return utf8.ValidString(s) && !strings.Contains(s, "\r\n") // which the reader of the CSV makes a line feed
+		})
 		cells := rapid.SliceOfN(rapid.SliceOfN(text, 3, 3), 1, 8).Draw(t, "cells")
 		var list strings.Builder
 		w := csv.NewWriter(&list)
@@ -31,8 +33,6 @@ func TestCellsAreCarriedUnchanged(t *testing.T) {
 		if err := w.WriteAll(records); err != nil {
 			t.Fatal(err)
 		}
-		// The reader of the CSV ends lines inside cells by a line feed alone.
-		normal := func(s string) string { return strings.ReplaceAll(strings.ReplaceAll(s, "\r\n", "\n"), "\r", "") }
 		o := batch.Options{In: batch.CSV, Out: batch.NDJSON, Dialect: dialect, Carry: []string{"*"}}
 		out, _, err := try(list.String(), o)
 		if err != nil {
@@ -58,13 +58,11 @@ func TestCellsAreCarriedUnchanged(t *testing.T) {
 			asJSON := []string{row.Carried["a"], row.Carried["b"], row.Carried["c"]}
 			asCSV := slices.Clone(read[i+1][3:6])
 			for k := range want {
-				stands := normal(want[k])
-				got := normal(asCSV[k])
+				got := asCSV[k]
 				if want[k] != "" && strings.ContainsRune("=+-@\t\r", rune(want[k][0])) {
-					got = strings.TrimPrefix(got, "'")
-					stands = strings.TrimPrefix(stands, "'")
+					got = strings.TrimPrefix(got, "'") // escaped
 				}
-				if got != stands || normal(asJSON[k]) != normal(want[k]) {
+				if got != want[k] || asJSON[k] != want[k] {
 					t.Fatalf("%q becomes %q in JSON and %q in CSV", want[k], asJSON[k], asCSV[k])
 				}
 			}
