@@ -8,6 +8,7 @@ import (
 	"errors"
 	"fmt"
 	"io"
+	"math"
 	"strconv"
 	"strings"
 	"testing"
@@ -74,31 +75,83 @@ func TestCSVInAndOut(t *testing.T) {
 	}
 }
 
-// The columns of an answer are inputs by the same names: a result is fed back.
+// The columns of an answer are inputs by the same names, in every system of units: a
+// result is fed back, and is answered the same.
 func TestResultsAreFedBack(t *testing.T) {
-	out, _ := run(t, listed, batch.Options{In: batch.CSV, Out: batch.CSV, Carry: []string{"from", "remark"}})
-	records, err := csv.NewReader(strings.NewReader(out)).ReadAll()
+	const list = "shape,diameter [mm],substance,temperature [degC],pressure [barg],volume_flow [m3/h],roughness [mm],length [m]\n" +
+		"circle,150,water,25,4.2,60,0.05,42\ncircle,150,air,25,6,600,0.05,42\n"
+	for _, system := range []string{"si", "plant", "us"} {
+		report, err := answer.ReportIn(system)
+		if err != nil {
+			t.Fatal(err)
+		}
+		o := batch.Options{In: batch.CSV, Out: batch.CSV, Report: report}
+		first, _ := run(t, list, o)
+		before := answers(t, first)
+		for _, leaves := range [][]string{
+			{"temperature", "pressure", "velocity"}, {"temperature", "pressure", "mass_flow"}, {"density", "dynamic_viscosity", "volume_flow"}, {"density", "kinematic_viscosity", "velocity"},
+		} {
+			head, fluid := []string{"shape", "diameter [mm]", "roughness [mm]", "length [m]"}, leaves[0] == "temperature"
+			if fluid {
+				head = append(head, "substance")
+			}
+			var columns []string
+			for _, leaf := range leaves {
+				columns = append(columns, columnOf(report, leaf))
+			}
+			records := [][]string{append(head, columns...)}
+			for i, row := range before {
+				record := []string{"circle", "150", "0.05", "42"}
+				if fluid {
+					record = append(record, []string{"water", "air"}[i])
+				}
+				for _, c := range columns {
+					record = append(record, row[c])
+				}
+				records = append(records, record)
+			}
+			var again strings.Builder
+			if err := csv.NewWriter(&again).WriteAll(records); err != nil {
+				t.Fatal(err)
+			}
+			second, _ := run(t, again.String(), o)
+			for i, row := range answers(t, second) {
+				want, errWant := strconv.ParseFloat(before[i]["reynolds"], 64)
+				got, errGot := strconv.ParseFloat(row["reynolds"], 64)
+				if errWant != nil || errGot != nil || math.Abs(got-want) > 1e-12*want {
+					t.Errorf("%s, %v: Reynolds %q, was %q: %s %s", system, columns, row["reynolds"], before[i]["reynolds"], row["error_pointer"], row["error_detail"])
+				}
+			}
+		}
+	}
+}
+
+// answers reads a CSV of answers as rows by column.
+func answers(t *testing.T, text string) []map[string]string {
+	t.Helper()
+	records, err := csv.NewReader(strings.NewReader(text)).ReadAll()
 	if err != nil {
 		t.Fatal(err)
 	}
-	at := func(name string) int {
-		for i, n := range records[0] {
-			if n == name {
-				return i
-			}
+	var rows []map[string]string
+	for _, r := range records[1:] {
+		row := map[string]string{}
+		for i, name := range records[0] {
+			row[name] = r[i]
 		}
-		t.Fatalf("no column %s", name)
-		return 0
+		rows = append(rows, row)
 	}
-	var again strings.Builder
-	again.WriteString("id,shape,hydraulic,density_kg_per_m3,dynamic_viscosity_Pa_s,volume_flow_m3_per_s,roughness [mm],length [m],diameter_m\n")
-	for _, r := range records[1:3] {
-		fmt.Fprintf(&again, "%s,circle,x,%s,%s,%s,0.05,42,%s\n", r[1], r[at("density_kg_per_m3")], r[at("dynamic_viscosity_Pa_s")], r[at("volume_flow_m3_per_s")], r[at("equal_area_diameter_m")])
+	return rows
+}
+
+// columnOf is the column of a numeric leaf in the units of a report.
+func columnOf(r *answer.Report, leaf string) string {
+	for _, f := range answer.Fields(answer.PressureBlock) {
+		if f.Name == leaf && r.ASCII(f.Kind) != "" {
+			return leaf + "_" + r.ASCII(f.Kind)
+		}
 	}
-	fed, s := run(t, again.String(), batch.Options{In: batch.CSV, Out: batch.CSV, Carry: []string{"hydraulic"}})
-	if s.OK != 2 {
-		t.Fatal(fed)
-	}
+	return leaf
 }
 
 // Every number of an answer reads back by the name of its column.
@@ -137,7 +190,7 @@ func TestHeadersAreToldAllAtOnce(t *testing.T) {
 	if !errors.As(err, &r) || len(r.Violations) != 8 {
 		t.Fatalf("%v", err)
 	}
-	for i, want := range []string{"diametre [mm] unknown_name", "diameter [kg] wrong_dimension", "length repeated_name", "shape [m] unit_not_used", "column 7 blank", "colour unknown_name", "width_kg unknown_name", "carry unknown_value"} {
+	for i, want := range []string{"diametre [mm] unknown_name", "diameter [kg] wrong_dimension", "length repeated_name", "shape [m] unit_not_used", "column 7 blank", "colour unknown_name", "width_kg wrong_dimension", "carry unknown_value"} {
 		if got := r.Violations[i].Parameter + " " + r.Violations[i].Code; got != want || r.Violations[i].Detail == "" {
 			t.Errorf("%s (%s), wanted %s", got, r.Violations[i].Detail, want)
 		}

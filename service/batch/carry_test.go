@@ -88,7 +88,7 @@ func TestCarriedNamesDoNotCollide(t *testing.T) {
 		{"[]", batch.Options{In: batch.JSON, Out: batch.JSON, Layout: batch.Columns, Carry: []string{"velocity"}}, []string{"carry repeated_name"}},
 		{"[]", batch.Options{In: batch.JSON, Out: batch.JSON, Layout: batch.Columns, Carry: []string{"*"}}, []string{"carry unknown_value"}},
 		{"[]", batch.Options{In: batch.JSON, Out: batch.JSON, Carry: []string{"velocity"}}, nil}, // in a place of its own
-		{"shape,velocity_kPa,status\n", batch.Options{In: batch.CSV, Out: batch.NDJSON, Carry: []string{"*"}}, nil},
+		{"shape,flow_area_m2,status\n", batch.Options{In: batch.CSV, Out: batch.NDJSON, Carry: []string{"*"}}, nil},
 	} {
 		_, _, err := try(c.in, c.o)
 		var r *document.Refusal
@@ -136,7 +136,7 @@ func TestKnownColumnsAreReadAndCarried(t *testing.T) {
 func TestMisspeltColumnsAreNotCarriedByAll(t *testing.T) {
 	for head, code := range map[string]string{
 		"shape,risee [m]": "unknown_name", "shape,Diameter [mm]": "unknown_name", "shape,remark": "", "shape,dp [bar]": "", "shape,insulation [mm]": "",
-		"shape,rise [kg]": "wrong_dimension",
+		"shape,rise [kg]": "wrong_dimension", "shape,outlet_pressure_bar": "pressure_basis", "shape,rise_kg": "wrong_dimension", "shape,length_old": "",
 	} {
 		_, _, err := try(head+"\n", batch.Options{In: batch.CSV, Out: batch.NDJSON, Carry: []string{"*"}})
 		var r *document.Refusal

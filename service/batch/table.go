@@ -131,7 +131,7 @@ func (c *column) read(carry []string) error {
 	if err == nil {
 		c.name, c.unit, c.number = known.name, known.unit, known.number
 	}
-	ownByAll := err != nil && slices.Contains(carry, carryAll) && !misspelt(c.head)
+	ownByAll := err != nil && codeOf(err) == flat.CodeUnknownName && slices.Contains(carry, carryAll) && !misspelt(c.head)
 	if c.carried = slices.Contains(carry, c.head) || ownByAll; c.carried {
 		return nil
 	}
@@ -171,17 +171,30 @@ func readColumn(text string) (column, error) {
 	if leaf, ok := flat.Lookup(text); ok {
 		return column{name: text, number: leaf.Number}, nil
 	}
+	unknown := unknownColumn(text)
 	for i := strings.LastIndexByte(text, '_'); i > 0; i = strings.LastIndexByte(text[:i], '_') {
 		leaf, ok := flat.Lookup(text[:i])
 		if !ok || !leaf.Number {
 			continue
 		}
-		kind := leaf.Field.Kind
-		if c, err := withUnit(text[:i], text[i+1:], func(u string) (units.Unit, error) { return units.UnitFromASCII(u, kind) }); err == nil {
+		c, err := withUnit(text[:i], text[i+1:], func(u string) (units.Unit, error) { return answersUnit(u, leaf.Field.Kind) })
+		if err == nil {
 			return c, nil
 		}
+		if codeOf(err) != units.CodeUnknownUnit {
+			unknown = err // a quantity of ours in a unit that is not its own
+		}
 	}
-	return column{}, unknownColumn(text)
+	return column{}, unknown
+}
+
+// answersUnit reads the unit of a column as answers write it. Their Pa of a state
+// pressure is absolute, and says so to the reader of the cells.
+func answersUnit(text string, kind units.Kind) (units.Unit, error) {
+	if kind == units.StatePressure && text == units.SI.Unit(kind).ASCII() {
+		return units.ParseUnit("Paa")
+	}
+	return units.UnitFromASCII(text, kind)
 }
 
 func unknownColumn(name string) error {
