@@ -8,6 +8,7 @@ import (
 	"log/slog"
 	"net"
 	"net/http"
+	"runtime"
 	"strings"
 	"testing"
 	"time"
@@ -148,14 +149,28 @@ func TestRefusedStreamIsReadOn(t *testing.T) {
 	}
 }
 
-// A client that goes away ends the work; the server goes on.
+// A client that goes away ends the work, whether it was sending, waiting or not
+// reading; the server goes on.
 func TestClientThatGoesAway(t *testing.T) {
 	address := batchServer(t, 0)
+	before := runtime.NumGoroutine()
 	for range 5 {
 		conn := patient(t, address)
 		fmt.Fprintf(conn, "POST /v1/segments HTTP/1.1\r\nHost: x\r\nContent-Type: application/x-ndjson\r\nContent-Length: 1000000\r\n\r\n%s\n", oneLine)
 		if err := conn.Close(); err != nil {
 			t.Fatal(err)
+		}
+		conn = patient(t, address)
+		if err := send(conn, ndjson, "", oneLine+"\n", 20000); err != nil {
+			t.Fatal(err)
+		}
+		if err := conn.Close(); err != nil {
+			t.Fatal(err)
+		}
+	}
+	for began := time.Now(); runtime.NumGoroutine() > before; time.Sleep(10 * time.Millisecond) {
+		if time.Since(began) > 5*time.Second {
+			t.Fatalf("%d goroutines, before %d", runtime.NumGoroutine(), before)
 		}
 	}
 	res, err := http.Post("http://"+address+"/v1/segments", "application/json", strings.NewReader("["+oneLine+"]"))
@@ -163,4 +178,24 @@ func TestClientThatGoesAway(t *testing.T) {
 		t.Fatal(res, err)
 	}
 	_ = res.Body.Close()
+}
+
+// A JSON answer that the spool does not hold is refused as a whole; the same rows
+// stream.
+func TestJSONAnswerBeyondTheSpool(t *testing.T) {
+	face, err := api.New(api.Options{Service: service.New(), BatchSpool: 1 << 20})
+	if err != nil {
+		t.Fatal(err)
+	}
+	face.Ready()
+	rows := strings.Repeat(oneLine+"\n", 1000)
+	p := wantProblem(t, batchOf(face, "/v1/segments", ndjson, "application/json", rows), 413, "body_too_large")
+	if !strings.Contains(p.Detail, "ask for NDJSON or CSV") {
+		t.Errorf("%s", p.Detail)
+	}
+	for _, accept := range []string{ndjson, "text/csv"} {
+		if res := batchOf(face, "/v1/segments", ndjson, accept, rows); res.StatusCode != 200 || !strings.Contains(text(t, res), "ok") {
+			t.Errorf("%s: %d", accept, res.StatusCode)
+		}
+	}
 }
