@@ -112,6 +112,9 @@ func New(o Options) (*API, error) {
 	}
 	a.echo.Use(a.identify, a.seen, a.recoverPanics, limitURL)
 	a.routes()
+	if err := a.docsRoutes(); err != nil {
+		return nil, err
+	}
 	if o.Scrape != nil {
 		a.get("/metrics", scrape(o.Scrape))
 	}

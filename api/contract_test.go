@@ -36,6 +36,8 @@ func loadContract(t testing.TB) *openapi3.T {
 	return doc
 }
 
+func init() { openapi3filter.RegisterBodyDecoder("text/html", openapi3filter.PlainBodyDecoder) }
+
 // judgeResponse holds one answer against the document; an undocumented status is
 // a fault too.
 func judgeResponse(doc *openapi3.T, r *http.Request, path string, res *http.Response, body []byte) error {
@@ -203,6 +205,9 @@ func TestEveryRouteIsDocumented(t *testing.T) {
 	face, _ := newFace(t, service.New())
 	for _, route := range face.Routes() {
 		route = strings.Replace(route, ":kind", "{kind}", 1)
+		if strings.HasPrefix(route, "GET /docs/") {
+			continue // what the page is made of
+		}
 		if strings.HasPrefix(route, "HEAD ") {
 			continue // HEAD is GET without a body, and every GET has it
 		}
