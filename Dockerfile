@@ -14,5 +14,6 @@ EXPOSE 8080
 # the service, without a key and without being counted. Publish it to a trusted
 # network only (docker run -p 127.0.0.1:8080:8080 keeps it on this machine), or
 # put a proxy in front that asks who is there.
+HEALTHCHECK --interval=10s --timeout=5s --start-period=2s CMD ["/borewright", "healthcheck", "--listen", "127.0.0.1:8080"]
 ENTRYPOINT ["/borewright"]
 CMD ["serve", "--listen", "0.0.0.0:8080", "--auth=off"]

@@ -42,6 +42,7 @@ var testArrows = []arrow{
 	{"", []string{"go.yaml.in/yaml/v3"}, "the document's conventions are read from its YAML nodes"},
 	{"", []string{"gonum.org/v1/gonum"}, "an independent oracle"},
 	{"", []string{"github.com/prometheus/client_golang"}, "metrics are linted in tests"},
+	{"", []string{"github.com/chromedp"}, "pages are tried in a real browser"},
 }
 
 // pureStd are the standard packages that calc may use: no clock, no network, no
