@@ -98,9 +98,9 @@ func TestMetricsCountWhatIsAnswered(t *testing.T) {
 func TestRequestLog(t *testing.T) {
 	face, _, logged := watched(t, api.Options{})
 	ask(face, "GET", "/v1/section?shape=circle&diameter=123.456+mm", "", "X-Request-Id", "caller-7")
-	post(face, "/v1/segment", strings.Replace(oneLine, "998", "-777", 1))
+	post(face, "/v1/segment", strings.Replace(oneLine, "998", "-86421.9", 1))
 	lines := strings.Split(strings.TrimSpace(logged.String()), "\n")
-	if len(lines) != 2 || strings.Contains(logged.String(), "123.456") || strings.Contains(logged.String(), "777") {
+	if len(lines) != 2 || strings.Contains(logged.String(), "123.456") || strings.Contains(logged.String(), "86421") {
 		t.Fatalf("%s", logged)
 	}
 	var line struct {
