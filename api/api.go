@@ -57,7 +57,13 @@ type Options struct {
 	// BatchPatience is how long a full spool waits for a client who reads nothing; 0
 	// is ten seconds.
 	BatchPatience time.Duration
+	// BatchDeadline is how long a batch that is answered as one document may take; 0
+	// is DefaultBatchDeadline. Streams have none while they get on.
+	BatchDeadline time.Duration
 }
+
+// DefaultBatchDeadline is far more than 64 MiB of rows take.
+const DefaultBatchDeadline = 2 * time.Minute
 
 // DefaultBatchSpool holds the answers of some 200,000 rows.
 const DefaultBatchSpool = 512 << 20
@@ -73,6 +79,7 @@ type API struct {
 	document []byte // openapi.json
 	spool    int64
 	patience time.Duration
+	deadline time.Duration // of a batch in one document
 
 	metrics    *Metrics
 	requestLog *slog.Logger
@@ -92,6 +99,9 @@ func New(o Options) (*API, error) {
 	}
 	if a.patience = o.BatchPatience; a.patience == 0 {
 		a.patience = spoolPatience
+	}
+	if a.deadline = o.BatchDeadline; a.deadline == 0 {
+		a.deadline = DefaultBatchDeadline
 	}
 	if a.log == nil {
 		a.log = slog.New(slog.DiscardHandler)

@@ -24,13 +24,14 @@ var (
 	invalidInput      = problem.InvalidInput
 	calculationFailed = problem.CalculationFailed
 	internal          = &problem.Kind{Name: "internal", Status: http.StatusInternalServerError, Title: "Something is wrong on our side"}
+	tooSlow           = &problem.Kind{Name: "too_slow", Status: http.StatusServiceUnavailable, Title: "The batch takes too long for one document"}
 	overloaded        = &problem.Kind{Name: "overloaded", Status: http.StatusServiceUnavailable, Title: "Too many requests at once"}
 	notReady          = &problem.Kind{Name: "not_ready", Status: http.StatusServiceUnavailable, Title: "Not ready"}
 )
 
 // problemKinds lists every kind; a test provokes each of them.
 var problemKinds = []*problem.Kind{
-	malformedBody, notFound, methodNotAllowed, bodyTooLarge, uriTooLong, unsupportedMedia, invalidInput, calculationFailed, internal, overloaded, notReady,
+	malformedBody, notFound, methodNotAllowed, bodyTooLarge, uriTooLong, unsupportedMedia, invalidInput, calculationFailed, internal, tooSlow, overloaded, notReady,
 }
 
 // ourFault is what a client reads where the cause is ours: the log has the cause

@@ -47,7 +47,7 @@ func (a *API) fail(err error, c echo.Context) {
 	h.Set("Cache-Control", "no-store")
 	unread := r.unread || r.kind == bodyTooLarge
 	switch {
-	case r.kind == notReady, r.kind == overloaded:
+	case r.kind == notReady, r.kind == overloaded, r.kind == tooSlow:
 		h.Set("Retry-After", "1")
 	case unread:
 		h.Set("Connection", "close")

@@ -5,9 +5,11 @@ import (
 	"net/http"
 	"strings"
 	"testing"
+	"time"
 
 	"borewright/api"
 	"borewright/calc"
+	"borewright/service"
 	"borewright/service/document"
 )
 
@@ -22,6 +24,10 @@ func TestEveryKindOfProblem(t *testing.T) {
 	}
 	busy, release := busyFace(t)
 	defer release()
+	hasty, err := api.New(api.Options{Service: service.New(), BatchDeadline: time.Nanosecond})
+	if err != nil {
+		t.Fatal(err)
+	}
 	provoke := map[string]struct {
 		status int
 		answer *http.Response
@@ -35,6 +41,7 @@ func TestEveryKindOfProblem(t *testing.T) {
 		"invalid_input":          {422, post(refuse(&document.Refusal{}), "/v1/segment", "{}")},
 		"calculation_failed":     {500, post(refuse(calc.ErrNoConvergence), "/v1/segment", "{}")},
 		"internal":               {500, post(refuse(errors.New("x")), "/v1/segment", "{}")},
+		"too_slow":               {503, batchOf(hasty, "/v1/segments", "application/json", "", "["+oneLine+"]")},
 		"overloaded":             {503, post(busy, "/v1/segment", "{}")},
 		"not_ready":              {503, ask(unready, "GET", "/readyz", "")},
 	}

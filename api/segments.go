@@ -68,8 +68,13 @@ func (a *API) wholeBatch(c echo.Context, q *batchQuery) error {
 	spool := batch.NewSpool(a.spool, 0)
 	defer func() { _ = spool.Close() }() // read to its end, or not worth reading
 	body := a.progress(c)
-	summary, err := batch.Run(c.Request().Context(), a.service, body, spool, q.Options)
+	ctx, cancel := context.WithTimeout(c.Request().Context(), a.deadline)
+	defer cancel()
+	summary, err := batch.Run(ctx, a.service, body, spool, q.Options)
 	a.metrics.countRows(summary.OK, summary.Failed)
+	if errors.Is(err, context.DeadlineExceeded) {
+		return &refusal{kind: tooSlow, detail: fmt.Sprintf("the batch was not answered within %v; send fewer rows, or NDJSON, which streams", a.deadline), unread: true}
+	}
 	if err != nil {
 		return err
 	}

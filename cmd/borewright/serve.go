@@ -25,6 +25,7 @@ type serveFlags struct {
 	logRequests   choice
 	maxConcurrent int
 	batchSpool    int64
+	batchDeadline time.Duration
 	shutdownGrace time.Duration
 	drainDelay    time.Duration
 }
@@ -46,6 +47,7 @@ func readServeFlags(p *process, args []string) (*serveFlags, error) {
 	fs.Var(&f.auth, "auth", "off: answer whoever reaches the address. Must be said when the address is not loopback")
 	fs.Var(&f.validate, "validate", "never or always: let the OpenAPI validator judge every request beside the strict reader")
 	fs.Int64Var(&f.batchSpool, "batch-spool", api.DefaultBatchSpool, "bytes of answers kept for each client of a batch that does not read them yet, in a temporary file")
+	fs.DurationVar(&f.batchDeadline, "batch-deadline", api.DefaultBatchDeadline, "how long a batch that is answered as one JSON document may take")
 	fs.DurationVar(&f.shutdownGrace, "shutdown-grace", 15*time.Second, "how long requests may still run after the drain delay")
 	fs.DurationVar(&f.drainDelay, "drain-delay", 500*time.Millisecond, "how long to answer on after a stop signal, not ready any more, so that a load balancer can look elsewhere")
 	show := fs.Bool("print-config", false, "print each setting with where it came from, and end")
@@ -62,6 +64,9 @@ func readServeFlags(p *process, args []string) (*serveFlags, error) {
 	}
 	if f.batchSpool < 1<<20 {
 		return nil, errors.New("--batch-spool must be at least 1048576 bytes")
+	}
+	if f.batchDeadline <= 0 {
+		return nil, errors.New("--batch-deadline must be positive")
 	}
 	if f.shutdownGrace <= 0 || f.drainDelay < 0 {
 		return nil, errors.New("--shutdown-grace must be positive, --drain-delay must not be negative")
@@ -86,7 +91,7 @@ func serve(p *process, args []string) int {
 	registry := newRegistry()
 	o := api.Options{
 		Service: service.New(), Logger: log, ValidateAlways: f.validate.value == "always",
-		Metrics: api.NewMetrics(registry), MaxConcurrent: f.maxConcurrent, BatchSpool: f.batchSpool,
+		Metrics: api.NewMetrics(registry), MaxConcurrent: f.maxConcurrent, BatchSpool: f.batchSpool, BatchDeadline: f.batchDeadline,
 	}
 	if f.logRequests.value == "on" {
 		o.RequestLog = log
