@@ -193,3 +193,15 @@ func TestCalcIsStoppedBySignals(t *testing.T) {
 		t.Errorf("ended by %v", cmd.ProcessState)
 	}
 }
+
+// Whoever throws the answers away is no person who reads a table.
+func TestNullDeviceIsNoTerminal(t *testing.T) {
+	null, err := os.OpenFile(os.DevNull, os.O_WRONLY, 0)
+	if err != nil {
+		t.Fatal(err)
+	}
+	defer func() { _ = null.Close() }()
+	if isTerminal(null) {
+		t.Error("the null device is taken for a terminal")
+	}
+}

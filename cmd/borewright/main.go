@@ -59,10 +59,15 @@ func stopSignals() <-chan os.Signal {
 	return signals
 }
 
-// isTerminal reports whether a file is one that people look at.
+// isTerminal reports whether a file is one that people look at. The null device is of
+// the same kind, and nobody looks at it.
 func isTerminal(f *os.File) bool {
 	info, err := f.Stat()
-	return err == nil && info.Mode()&os.ModeCharDevice != 0
+	if err != nil || info.Mode()&os.ModeCharDevice == 0 {
+		return false
+	}
+	null, err := os.Stat(os.DevNull)
+	return err != nil || !os.SameFile(info, null)
 }
 
 func dispatch(p *process, args []string) int {

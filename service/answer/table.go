@@ -113,6 +113,7 @@ func Rounded(v float64, figures int) string {
 type TableText struct {
 	rows  [][]string
 	notes []tableNote
+	at    map[string]int // of the notes, by their text
 }
 
 // tableNote is a note with the segments that earn it.
@@ -138,13 +139,16 @@ func (t *TableText) Add(b []byte) {
 }
 
 func (t *TableText) note(text, name string) {
-	for i := range t.notes {
-		if t.notes[i].text == text {
-			t.notes[i].of = append(t.notes[i].of, name)
-			return
-		}
+	if t.at == nil {
+		t.at = map[string]int{}
 	}
-	t.notes = append(t.notes, tableNote{text, []string{name}})
+	i, known := t.at[text]
+	if !known {
+		i = len(t.notes)
+		t.at[text] = i
+		t.notes = append(t.notes, tableNote{text: text})
+	}
+	t.notes[i].of = append(t.notes[i].of, name)
 }
 
 // noteOrder is what a person must see first.
