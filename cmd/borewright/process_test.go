@@ -25,7 +25,7 @@ func TestMain(m *testing.M) {
 
 // started is a running program.
 type started struct {
-	t              *testing.T
+	t              testing.TB
 	cmd            *exec.Cmd
 	base           string // http://host:port
 	stderr         *buffer
@@ -53,7 +53,7 @@ func (b *buffer) String() string {
 	return b.b.String()
 }
 
-func program(t *testing.T, env []string, args ...string) *exec.Cmd {
+func program(t testing.TB, env []string, args ...string) *exec.Cmd {
 	t.Helper()
 	self, err := os.Executable()
 	if err != nil {
@@ -83,7 +83,7 @@ func finish(t *testing.T, env []string, args ...string) (code int, stdout, stder
 const announcement = "Borewright answers on "
 
 // startServing starts serve on a free loopback port and reads its address.
-func startServing(t *testing.T, env []string, args ...string) *started {
+func startServing(t testing.TB, env []string, args ...string) *started {
 	t.Helper()
 	s := &started{t: t, stderr: &buffer{}, stdout: &buffer{}, exited: make(chan struct{})}
 	s.cmd = program(t, env, append([]string{"serve", "--listen", "127.0.0.1:0"}, args...)...)
