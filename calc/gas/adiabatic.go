@@ -138,6 +138,7 @@ func (l *Line) fannoEnds(known State, rise float64, atOutlet bool) Ends {
 	total := known.Temperature * (2 + (g-1)*m2)
 	velocities := 2 * g * l.Gas.SpecificConstant * total * rise / ((2 + (g-1)*m2) * (2 + (g-1)*other))
 	ends.Faster = velocities / (ends.In.Velocity + ends.Out.Velocity)
+	ends.Loss = ends.Drop - l.MassFlux*ends.Faster
 	return ends
 }
 

@@ -19,11 +19,12 @@ type risingGas struct {
 	velocity float64 // at the known end [m/s]
 }
 
-// progress is how far along: x, ln V less that at the known end, and ∫ ρ g dz [Pa].
-type progress struct{ x, log, weight float64 }
+// progress is how far along: x, ln V less that at the known end, ∫ ρ g dz [Pa] and
+// ∫ N ρ V²/2 dx [Pa].
+type progress struct{ x, log, weight, loss float64 }
 
 func (p progress) plus(h float64, d progress) progress {
-	return progress{p.x + h*d.x, p.log + h*d.log, p.weight + h*d.weight}
+	return progress{p.x + h*d.x, p.log + h*d.log, p.weight + h*d.weight, p.loss + h*d.loss}
 }
 
 // adiabaticRise carries the gas from the known end to the other.
@@ -46,9 +47,9 @@ func (l *Line) adiabaticRise(known State, atOutlet bool) (Ends, error) {
 	rise := r.rise(known, far, end)
 	faster := known.Velocity * math.Expm1(end.log)
 	if atOutlet {
-		return Ends{In: far, Out: known, Drop: rise, Weight: -end.weight, Faster: -faster}, nil
+		return Ends{In: far, Out: known, Drop: rise, Weight: -end.weight, Loss: -end.loss, Faster: -faster}, nil
 	}
-	return Ends{In: known, Out: far, Drop: -rise, Weight: end.weight, Faster: faster}, nil
+	return Ends{In: known, Out: far, Drop: -rise, Weight: end.weight, Loss: end.loss, Faster: faster}, nil
 }
 
 // rise is the pressure at the far end less that at the known one, from the changes
@@ -76,7 +77,8 @@ func (r *risingGas) slope(p progress) progress {
 	m2 := s.Mach * s.Mach
 	a := g*m2*r.line.Resistance/2 + r.line.Lift/(g*r.line.Gas.SpecificConstant*s.Temperature)
 	w := math.Abs(1-m2) + math.Abs(a)
-	return progress{x: (1 - m2) / w, log: a / w, weight: r.line.MassFlux / s.Velocity * r.line.Lift * (1 - m2) / w}
+	dx := (1 - m2) / w
+	return progress{x: dx, log: a / w, weight: r.line.MassFlux / s.Velocity * r.line.Lift * dx, loss: r.line.Resistance * r.line.MassFlux * s.Velocity / 2 * dx}
 }
 
 // subsonic: a gas still below its limiting velocity, and not frozen to nothing.

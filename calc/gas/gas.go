@@ -39,12 +39,13 @@ type Known struct {
 }
 
 // Ends are the states at both ends of the line. Drop is the fall of static
-// pressure from inlet to outlet, Weight the part of it that lifts the gas, Faster
-// what the velocity gains: each formed without subtracting the ends where they are
-// close, so that a slow gas loses no digits.
+// pressure from inlet to outlet, Loss the part of it that friction and fittings take,
+// Weight the part that lifts the gas, Faster what the velocity gains: each formed
+// without subtracting the ends where they are close, so that a slow gas loses no digits.
 type Ends struct {
 	In, Out State
 	Drop    float64 // [Pa]
+	Loss    float64 // [Pa]
 	Weight  float64 // [Pa]
 	Faster  float64 // [m/s]
 }

@@ -237,6 +237,42 @@ func TestDownhillAndBack(t *testing.T) {
 	}
 }
 
+// However slow, a gas is not choked, and its loss keeps its digits under a weight that
+// is far larger: N ρ V²/2 while the density changes little.
+func TestSlowestGas(t *testing.T) {
+	for _, law := range laws {
+		for _, lift := range []float64{0, 98, -98} {
+			for _, flux := range []float64{1e-12, 1e-9, 1e-6, 1e-3, 1} {
+				for _, atOutlet := range []bool{false, true} {
+					line := gas.Line{Gas: gas.Gas{SpecificConstant: 287, HeatCapacityRatio: 1.4}, MassFlux: flux, Resistance: 30, Lift: lift}
+					ends, err := law.ends(line, gas.Known{Pressure: 1e5, Temperature: 300, AtOutlet: atOutlet})
+					want := 30 * flux * flux / 2 * 287 * 300 / 1e5
+					if err != nil || math.Abs(ends.Loss/want-1) > 2e-3 {
+						t.Errorf("%s, %g kg/(m2 s), lift %g: loss %g, want %g, %v", law.name, flux, lift, ends.Loss, want, err)
+					}
+				}
+			}
+		}
+	}
+}
+
+// High up, where the pressure falls to a fraction, the weight and the loss of a slow
+// isothermal gas are those of the barometric column: loss N G²/2 ∫ 1/ρ dx.
+func TestHighRise(t *testing.T) {
+	for _, x := range []float64{0.5, 2, 5, 9} { // lift/(Rs T)
+		rt := 287 * 300.
+		line := gas.Line{Gas: gas.Gas{SpecificConstant: 287}, MassFlux: 1e-4, Resistance: 10, Lift: x * rt}
+		ends, err := gas.Isothermal(line, gas.Known{Pressure: 1e6, Temperature: 300})
+		if err != nil {
+			t.Fatal(err)
+		}
+		want := 10 * 1e-8 / 2 * rt / 1e6 * math.Expm1(x) / x
+		if math.Abs(ends.Loss/want-1) > 1e-7 || math.Abs(ends.Weight/(-1e6*math.Expm1(-x))-1) > 1e-9 {
+			t.Errorf("lift %v Rs T: loss %v, want %v; weight %v", x, ends.Loss, want, ends.Weight)
+		}
+	}
+}
+
 // Falling slowly, a gas gains more by its weight than friction takes.
 func TestWeightExceedsFriction(t *testing.T) {
 	for _, law := range laws {

@@ -52,8 +52,7 @@ func Isothermal(l Line, k Known) (Ends, error) {
 	if k.AtOutlet {
 		ends = l.isothermalEnds(math.Sqrt(s.known+difference), k, difference)
 	}
-	ends.Weight, err = s.weight(&l, &ends)
-	return ends, err
+	return ends, s.parts(&l, &ends)
 }
 
 // isothermalEnds puts the known end and the other one, at the given pressure, in
@@ -158,9 +157,20 @@ func (s *isothermalLine) farthest(drive float64, f func(float64) float64) (float
 	return far, nil
 }
 
-// notChoked refuses a line that reaches its limiting velocity on the way.
+// notChoked refuses a line that reaches its limiting velocity on the way. The span
+// to the limit is formed from its ends, since of a slow gas it is nearly everything.
 func (s *isothermalLine) notChoked(far float64) (float64, error) {
-	if reach := s.span(far); reach < 1 {
+	y1, y2 := s.known, s.a
+	if s.atOutlet {
+		y1, y2 = s.a, s.known
+	}
+	b, logs := s.a*s.n, math.Log(y1/y2)
+	reach := (y1 - y2 - s.a*logs) / b
+	if s.c != 0 {
+		lift := math.Log1p(s.c * (y1 - y2) / (b + s.c*y2))
+		reach = lift/s.c - (s.a/b)*(logs-lift)
+	}
+	if reach < 1 {
 		return 0, &ChokedError{Resistance: s.n * reach}
 	}
 	return far, nil
@@ -205,31 +215,65 @@ func bracketed(far float64, f, slope func(float64) float64) (float64, error) {
 // line: along the pressure the balance of weight and friction would divide by zero.
 const flat = 1e-3
 
-// weight is ∫ ρ g dz over the line, by Gauss and Legendre: along the pressure,
-// where the limiting velocity leaves no trace, or along the line.
-func (s *isothermalLine) weight(l *Line, ends *Ends) (float64, error) {
+// panel is the step of ln p over which the integrals along the pressure are smooth
+// enough for one rule.
+const panel = 0.25
+
+// parts splits the drop of a line with a rise: the weight ∫ ρ g dz and the loss
+// ∫ N ρ V²/2 dx, by Gauss and Legendre along the pressure, where the limiting
+// velocity leaves no trace, or along the line. The larger of the two is what is left
+// of the drop, so that the smaller one keeps its digits.
+func (s *isothermalLine) parts(l *Line, ends *Ends) error {
+	momentum := l.MassFlux * ends.Faster
 	if l.Lift == 0 {
-		return 0, nil
+		ends.Loss = ends.Drop - momentum
+		return nil
 	}
 	rt := l.Gas.SpecificConstant * ends.In.Temperature
 	if math.Abs(ends.Drop) > flat*ends.In.Pressure {
-		sum := 0.0
-		for i, x := range legendre.nodes {
-			p := ends.Out.Pressure + x*ends.Drop
-			sum += legendre.weights[i] * (p*p - s.a) / (s.a*s.n + s.c*p*p)
-		}
-		return 2 * l.Lift / rt * ends.Drop * sum, nil
+		s.alongPressure(l, ends, rt)
+	} else if err := s.alongLine(l, ends, rt); err != nil {
+		return err
 	}
-	sum := 0.0
+	if math.Abs(ends.Weight) > ends.Loss {
+		ends.Weight = ends.Drop - momentum - ends.Loss
+	} else {
+		ends.Loss = ends.Drop - momentum - ends.Weight
+	}
+	return nil
+}
+
+func (s *isothermalLine) alongPressure(l *Line, ends *Ends, rt float64) {
+	span := math.Log(ends.In.Pressure / ends.Out.Pressure)
+	panels := min(math.Ceil(math.Abs(span)/panel), 1e5)
+	weight, loss := 0.0, 0.0
+	low := ends.Out.Pressure
+	for i := 1.0; i <= panels; i++ {
+		high := ends.Out.Pressure * math.Exp(span*i/panels)
+		for k, x := range legendre.nodes {
+			p := low + x*(high-low)
+			w := legendre.weights[k] * (high - low) / (s.a*s.n + s.c*p*p)
+			weight += w * (p*p - s.a)
+			loss += w * (1 - s.a/(p*p))
+		}
+		low = high
+	}
+	ends.Weight, ends.Loss = 2*l.Lift/rt*weight, s.n*s.a*loss
+}
+
+func (s *isothermalLine) alongLine(l *Line, ends *Ends, rt float64) error {
+	weight, loss := 0.0, 0.0
 	for i, x := range legendre.nodes {
 		part := l.Part(x)
-		inner, err := part.isothermalPart(ends)
+		p, err := part.isothermalPart(ends)
 		if err != nil {
-			return 0, err
+			return err
 		}
-		sum += legendre.weights[i] * inner
+		weight += legendre.weights[i] * p
+		loss += legendre.weights[i] / p
 	}
-	return l.Lift / rt * sum, nil
+	ends.Weight, ends.Loss = l.Lift/rt*weight, s.n*s.a/2*loss
+	return nil
 }
 
 // isothermalPart is the pressure at the end of this first part of a line.

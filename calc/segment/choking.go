@@ -17,7 +17,12 @@ func (out *Result) choked(in *Input, model GasModel, err error) error {
 		return err
 	}
 	asked := out.Flow.MassFlow
-	most := in.mostFlow(asked, model)
+	most, err := in.mostFlow(asked, model)
+	if err != nil {
+		return &calc.Error{Kind: calc.ErrChoked, Quantity: "flow", Value: asked, Detail: fmt.Sprintf(
+			"the gas reaches its limiting velocity after %.6g m of %.6g m; how much passes cannot be told by this friction law, which does not hold for less flow: take colebrook_white",
+			out.lengthToChoking(in, model), in.Length)}
+	}
 	if most == 0 {
 		return &calc.Error{Kind: calc.ErrChoked, Quantity: "flow", Value: asked, Detail: "no flow of this gas gets through this segment from this state"}
 	}
@@ -60,8 +65,8 @@ func (out *Result) atChoking(in *Input, asked, most float64) error {
 const bisections = 60
 
 // mostFlow is the largest mass flow [kg/s] that passes, below one that does not; 0
-// where none does.
-func (in *Input) mostFlow(asked float64, model GasModel) float64 {
+// where none does. Its error is what keeps a smaller flow from being calculated at all.
+func (in *Input) mostFlow(asked float64, model GasModel) (float64, error) {
 	passes := 0.0
 	trial := *in
 	var out Result
@@ -71,30 +76,38 @@ func (in *Input) mostFlow(asked float64, model GasModel) float64 {
 			break
 		}
 		trial.Flow = flow.Rate{By: flow.ByMass, Value: middle}
-		if trial.passes(&out, model) {
+		ok, err := trial.passes(&out, model)
+		switch {
+		case err != nil:
+			return 0, err
+		case ok:
 			passes = middle
-		} else {
+		default:
 			asked = middle
 		}
 	}
-	return passes
+	return passes, nil
 }
 
-// passes reports whether the gas gets through; why not needs no words.
-func (in *Input) passes(out *Result, model GasModel) bool {
-	if in.friction(out) != nil {
-		return false
+// passes reports whether the gas gets through; that it chokes is no error.
+func (in *Input) passes(out *Result, model GasModel) (bool, error) {
+	if err := in.friction(out); err != nil {
+		return false, err
 	}
 	loss, err := in.lossOf(out)
 	if err != nil {
-		return false
+		return false, err
 	}
 	out.losses(in, &loss)
-	if out.endVelocities(in) != nil {
-		return false
+	if err := out.endVelocities(in); err != nil {
+		return false, err
 	}
 	_, err = out.gasBranches(in, model)
-	return err == nil
+	var limit *gas.ChokedError
+	if errors.As(err, &limit) {
+		return false, nil
+	}
+	return err == nil, err
 }
 
 // lengthToChoking is the developed length [m] at which the asked flow reaches its

@@ -158,10 +158,9 @@ func integrate(l gas.Line, from gas.State, atOutlet, adiabatic bool) (gas.Ends, 
 // resistance.
 func (d *gasDuct) drops(ends *gas.Ends, changes float64) gasDrops {
 	momentum := d.line.MassFlux * ends.Faster
-	losses := ends.Drop - ends.Weight - momentum
-	fittings := losses * (d.fittings / d.line.Resistance)
+	fittings := ends.Loss * (d.fittings / d.line.Resistance)
 	return gasDrops{
-		friction: losses - fittings, fittings: fittings, elevation: ends.Weight,
+		friction: ends.Loss - fittings, fittings: fittings, elevation: ends.Weight,
 		acceleration: momentum + changes, static: ends.Drop + changes,
 	}
 }

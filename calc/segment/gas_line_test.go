@@ -10,6 +10,7 @@ import (
 	"borewright/calc/fitting"
 	"borewright/calc/flow"
 	"borewright/calc/fluid"
+	"borewright/calc/friction"
 	"borewright/calc/section"
 	"borewright/calc/segment"
 
@@ -226,6 +227,19 @@ func TestAnswerAtChokingIsTheLargestFlow(t *testing.T) {
 			if err := segment.PressureDrop(&in, &out); !errors.Is(err, calc.ErrChoked) || !strings.Contains(err.Error(), "at most") {
 				t.Errorf("%v above the largest flow: %v", model, err)
 			}
+		}
+	}
+}
+
+// A law that does not hold for less flow cannot tell how much passes, and says so.
+func TestChokingBeyondTheLawsRange(t *testing.T) {
+	for _, answered := range []bool{false, true} {
+		in := nitrogenLine(t)
+		in.Flow.Value, in.Law, in.AnswerAtChoking = 50, friction.VonKarmanRoughLaw, answered
+		var out segment.Result
+		err := segment.PressureDrop(&in, &out)
+		if !errors.Is(err, calc.ErrChoked) || !strings.Contains(err.Error(), "cannot be told") {
+			t.Errorf("%v", err)
 		}
 	}
 }
