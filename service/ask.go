@@ -30,7 +30,12 @@ type Reply struct {
 // Ask answers a query. The error is a *document.Refusal that names the parameters.
 func (s *Service) Ask(dst []byte, q *Query) (Reply, error) {
 	d := s.takeDesk()
-	defer s.desks.Put(d)
+	reply, err := q.ask(d, dst)
+	s.desks.Put(d) // not after a panic, which may have left anything in it
+	return reply, err
+}
+
+func (q *Query) ask(d *Desk, dst []byte) (Reply, error) {
 	a, err := d.AnswerFlat(q.Pairs, q.Door)
 	if err = q.checkPick(err); err != nil {
 		return Reply{}, err

@@ -68,3 +68,48 @@ func (w *work) dangerOf(out *answer.Answer, quantity string) (float64, bool) {
 	}
 	return 0, false
 }
+
+// wetAbove is by how much a steam may lie above its saturation pressure by rounding.
+const wetAbove = 1e-6
+
+// condensing notes steam that is answered beyond its saturation: two phases.
+func (w *work) condensing(out *answer.Answer) {
+	if !w.applies("steam") || !out.Result.Gas.InletTemperature.Valid {
+		return
+	}
+	for _, s := range out.Result.Gas.Stations {
+		saturation, err := fluid.WaterSaturationPressure(s.Temperature)
+		if err == nil && s.Pressure > saturation*(1+wetAbove) {
+			out.Notes = append(out.Notes, answer.Note{Code: "condensing", Level: answer.Limit, Source: waterSaturation,
+				Text: fmt.Sprintf("At %.5g Pa and %.5g K this steam would condense: two phases, this answer does not hold.", s.Pressure, s.Temperature)})
+			return
+		}
+	}
+}
+
+const waterSaturation = "IAPWS R7-97(2012), section 8"
+
+// perfectTo is the deviation of density from that of a perfect gas with the
+// compressibility factor of the known end, above which the answer is doubtful.
+const perfectTo = 0.02
+
+// realGas notes a named gas whose compressibility factor changes along the segment.
+func (w *work) realGas(out *answer.Answer) {
+	r := &out.Result
+	if w.req.Fluid.Way != document.BySubstance || !r.Gas.InletTemperature.Valid {
+		return
+	}
+	far := r.Gas.Stations[3]
+	if r.Gas.AtOutlet {
+		far = r.Gas.Stations[0]
+	}
+	real, err := propertiesOf(w.req.Fluid.Substance, fluid.StatePoint{Temperature: far.Temperature, Pressure: far.Pressure})
+	if err != nil {
+		return // near saturation: condensing says what there is to say
+	}
+	perfect := far.Pressure / (r.Gas.Line.Gas.SpecificConstant * far.Temperature)
+	if deviation := perfect/real.Density - 1; deviation > perfectTo || deviation < -perfectTo {
+		out.Notes = append(out.Notes, answer.Note{Code: "perfect_gas_doubtful", Level: answer.Caution, Source: real.Source,
+			Text: fmt.Sprintf("The compressibility factor changes along the segment: at the far end the density of a perfect gas is off by %.2g %%. Split the segment.", 100*deviation)})
+	}
+}

@@ -136,6 +136,7 @@ func (w *work) surroundings() {
 	if !s.Given {
 		return
 	}
+	w.atmosphereUsed = true
 	p, err := propertiesOf(s.Substance, fluid.StatePoint{Temperature: s.Temperature.Value, Pressure: w.atmosphere})
 	if err != nil {
 		w.fault(err, "/surroundings")

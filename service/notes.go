@@ -80,6 +80,8 @@ func (w *work) notes(out *answer.Answer) {
 		w.gas(out)
 		w.zeroRoughness(out)
 	}
+	w.condensing(out)
+	w.realGas(out)
 	w.cautions(out)
 	w.oddities(out)
 	if w.req.Door != document.SectionDoor {
@@ -368,7 +370,7 @@ func (w *work) segmentDefaults(add func(string)) {
 
 // atmosphereDefault stands at every door: a vapour pressure can be gauge too.
 func (w *work) atmosphereDefault(add func(string)) {
-	if w.gaugeUsed && !w.req.Site.AtmosphericPressure.Given && !w.req.Site.Altitude.Given {
+	if w.atmosphereUsed && !w.req.Site.AtmosphericPressure.Given && !w.req.Site.Altitude.Given {
 		add("atmospheric_pressure 101325 Pa")
 	}
 }

@@ -62,6 +62,9 @@ var noteCases = []noteCase{
 	{"surge_not_calculated", "caution", with(quiet(), object{"flow": object{"velocity": 4}}), "sound speed"},
 	{"vacuum_and_collapse", "caution", with(quiet(), object{"inlet_pressure": 120000, "fluid/vapour_pressure": nil}), "drawn in"},
 	{"near_vapour_pressure", "caution", with(quiet(), object{"fluid/vapour_pressure": 430000}), "cavitate"},
+	{"condensing", "limit", with(named(object{"substance": "water", "state": "saturated_vapour", "pressure": 2e5}), object{"outlet_pressure": 2e5, "flow": object{"mass_flow": 0.2}, "section/diameter": 0.05, "fittings": nil}), "condense"},
+	{"perfect_gas_doubtful", "caution", with(named(object{"substance": "water", "state": "saturated_vapour", "pressure": 1e6}), object{"flow": object{"mass_flow": 0.85}, "section/diameter": 0.05, "length": 40, "fittings": nil, "rise": nil}), "Split"},
+	{"defaults_used", "info", with(nitrogen(), object{"site/atmospheric_pressure": nil}), "atmospheric_pressure 101325 Pa"},
 	{"scald", "caution", named(object{"substance": "water", "temperature": 340, "pressure": 9e5}), "scalds"},
 	{"steam_hammer", "caution", with(named(object{"substance": "water", "state": "saturated_vapour", "pressure": 9e5}), object{"flow": object{"mass_flow": 0.4}}), "drain"},
 	{"gas_displaces_air", "caution", nitrogen(), "suffocate"},
@@ -79,7 +82,7 @@ var noteCases = []noteCase{
 }
 
 func TestNotesAreTriggered(t *testing.T) {
-	missing := append(service.ConditionCodes(), "regime_uncertain", "developing_flow", "gas_taken_incompressible", "roughness_zero", "defaults_used")
+	missing := append(service.ConditionCodes(), "regime_uncertain", "developing_flow", "gas_taken_incompressible", "roughness_zero", "defaults_used", "condensing", "perfect_gas_doubtful")
 	for _, c := range catalog.Cautions() {
 		missing = append(missing, c.Code)
 	}

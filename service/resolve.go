@@ -31,10 +31,10 @@ type work struct {
 	reference  fluid.StatePoint // of a reference volume flow
 	// saturatedAt is the pressure [Pa] that a saturated state was given by; its
 	// temperature forgets the last digits.
-	saturatedAt float64
-	gaugeUsed   bool
-	canonical   []byte
-	defaults    []byte
+	saturatedAt    float64
+	atmosphereUsed bool
+	canonical      []byte
+	defaults       []byte
 }
 
 // refuse notes what is wrong and lets the work go on, so that everything is found.
@@ -55,7 +55,7 @@ func (w *work) resolve() error {
 	r := &w.req
 	w.violations = w.violations[:0]
 	w.in = segment.Input{Gravity: segment.StandardGravity, Law: r.Law, DiameterRule: r.DiameterRule}
-	w.reference, w.saturatedAt, w.atmosphere, w.gaugeUsed = fluid.StatePoint{}, 0, standardAtmosphere, false
+	w.reference, w.saturatedAt, w.atmosphere, w.atmosphereUsed = fluid.StatePoint{}, 0, standardAtmosphere, false
 	if r.Door == document.FluidDoor {
 		w.site()
 		w.fluid()
@@ -138,7 +138,7 @@ func (w *work) absolute(n document.Number, in calc.Input, pointer string) calc.O
 	if !n.Given || n.Basis != units.Gauge {
 		return given(n)
 	}
-	w.gaugeUsed = true
+	w.atmosphereUsed = true
 	p := n.Value + w.atmosphere
 	if !in.Bound().Contains(p) {
 		w.refuse(pointer, "outside_domain", fmt.Sprintf("%g Pa gauge is %g Pa absolute at this site's atmosphere of %g Pa; a pressure lies above vacuum", n.Value, p, w.atmosphere))

@@ -117,12 +117,12 @@ func (s *Service) AnswerJSON(dst, body []byte, door document.Door) ([]byte, erro
 // blame; anything else is our fault.
 func (s *Service) AnswerIn(dst, body []byte, door document.Door, r *answer.Report) ([]byte, error) {
 	d := s.takeDesk()
-	defer s.desks.Put(d)
 	a, err := d.Answer(body, door, Posted)
-	if err != nil {
-		return dst, err
+	if err == nil {
+		dst, err = answer.AppendJSON(dst, a, r)
 	}
-	return answer.AppendJSON(dst, a, r)
+	s.desks.Put(d) // not after a panic, which may have left anything in it
+	return dst, err
 }
 
 func (s *Service) takeDesk() *Desk {

@@ -48,7 +48,7 @@ func Isothermal(l Line, k Known) (Ends, error) {
 	if err != nil {
 		return Ends{}, err
 	}
-	ends := l.isothermalEnds(math.Sqrt(s.known-difference), k, difference)
+	ends := l.isothermalEnds(math.Sqrt(max(s.known-difference, s.a)), k, difference) // subsonic, where the difference is nearly all
 	if k.AtOutlet {
 		ends = l.isothermalEnds(math.Sqrt(s.known+difference), k, difference)
 	}

@@ -22,6 +22,9 @@ func healthcheck(p *process, args []string) int {
 	if err != nil {
 		return p.usage("healthcheck: %v", err)
 	}
+	if *timeout <= 0 {
+		return p.usage("healthcheck: --timeout must be positive")
+	}
 	host, port, err := net.SplitHostPort(*listen)
 	if err != nil {
 		return p.usage("healthcheck: --listen %s is no address: %v", *listen, err)
@@ -35,7 +38,7 @@ func healthcheck(p *process, args []string) int {
 	if err != nil {
 		return p.usage("healthcheck: %v", err)
 	}
-	res, err := http.DefaultClient.Do(request)
+	res, err := (&http.Client{Transport: &http.Transport{}, CheckRedirect: asItIs}).Do(request) // no proxy between
 	if err != nil {
 		return p.notHealthy("%v", err)
 	}
@@ -45,6 +48,10 @@ func healthcheck(p *process, args []string) int {
 	}
 	return exitOK
 }
+
+// asItIs follows no redirect: a server that sends the question elsewhere is not the
+// one that was asked.
+func asItIs(*http.Request, []*http.Request) error { return http.ErrUseLastResponse }
 
 func (p *process) notHealthy(format string, args ...any) int {
 	p.usage("healthcheck: "+format, args...)
