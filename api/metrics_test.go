@@ -72,7 +72,7 @@ func TestMetricsCountWhatIsAnswered(t *testing.T) {
 		`borewright_calculations_total{door="segment",fluid="by_properties",law="colebrook_white",regime="turbulent"} 3`,
 		`borewright_calculations_total{door="fluid",fluid="water",law="none",regime="none"} 1`,
 		`borewright_notes_total{code="defaults_used",level="info"} 3`,
-		`borewright_refusals_total{code="required"} 5`,
+		`borewright_refusals_total{code="required"} 10`,
 		`borewright_refusals_total{code="unknown_name"} 1`,
 		`borewright_http_request_duration_seconds_count{method="POST",route="/v1/segment",status="200"} 1`,
 		`borewright_http_request_duration_seconds_count{method="POST",route="/v1/segment",status="422"} 1`,

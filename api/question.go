@@ -92,8 +92,7 @@ func readQuestion(raw string, door document.Door) (*service.Query, bool, error) 
 	}
 	asText, faults := setOptions(q, values)
 	if wrong = append(wrong, faults...); wrong != nil {
-		_, more := flat.AppendDocument(nil, q.Pairs, door)
-		return nil, asText, &document.Refusal{Violations: append(wrong, more...)}
+		return nil, asText, &document.Refusal{Violations: append(wrong, service.FlatFaults(q.Pairs, door)...)}
 	}
 	return q, asText, nil
 }

@@ -4,6 +4,7 @@ import (
 	"crypto/sha256"
 	"errors"
 	"fmt"
+	"slices"
 	"strings"
 
 	"borewright/service/answer"
@@ -62,10 +63,33 @@ func (q *Query) ask(d *Desk, dst []byte) (Reply, error) {
 func (d *Desk) AnswerFlat(pairs []flat.Pair, door document.Door) (*answer.Answer, error) {
 	var wrong []document.Violation
 	if d.flat, wrong = flat.AppendDocument(d.flat[:0], pairs, door); wrong != nil {
-		return nil, d.service.refused(&document.Refusal{Violations: wrong})
+		return nil, d.service.refused(&document.Refusal{Violations: allFaults(wrong, d.flat, door)})
 	}
 	a, err := d.Answer(d.flat, door, Typed)
 	return a, ByNames(err)
+}
+
+// FlatFaults is all that is wrong with names and values, without calculating.
+func FlatFaults(pairs []flat.Pair, door document.Door) []document.Violation {
+	body, wrong := flat.AppendDocument(nil, pairs, door)
+	return allFaults(wrong, body, door)
+}
+
+// allFaults puts what the reader finds wrong with the values behind what is wrong with
+// the names. A name that is told already, or missing for that, is not told twice.
+func allFaults(wrong []document.Violation, body []byte, door document.Door) []document.Violation {
+	var req document.Request
+	var read *document.Refusal
+	if !errors.As(ByNames(document.ReadTyped(body, door, &req)), &read) {
+		return wrong
+	}
+	told := len(wrong)
+	for _, v := range read.Violations {
+		if !slices.ContainsFunc(wrong[:told], func(o document.Violation) bool { return o.Parameter == v.Parameter }) {
+			wrong = append(wrong, v)
+		}
+	}
+	return wrong
 }
 
 // ByNames tells a refusal by flat names instead of JSON pointers.

@@ -24,39 +24,52 @@ const (
 // value as text, for [document.ReadTyped]. What is wrong with the names is told by them; the
 // values are the reader's business.
 func AppendDocument(dst []byte, pairs []Pair, door document.Door) ([]byte, []document.Violation) {
-	if wrong := faults(pairs, door); wrong != nil {
-		return dst, wrong
-	}
-	var wrong []document.Violation
+	good, wrong := sift(pairs, door)
 	dst = append(dst, '{')
 	start := len(dst)
 	for _, block := range blockOrder {
-		dst = appendBlock(dst, start, block, pairs, &wrong)
+		dst = appendBlock(dst, start, block, good, &wrong)
 	}
 	return append(dst, '}'), wrong
 }
 
-// faults are the unknown, repeated, blank and unused names among the pairs.
-func faults(pairs []Pair, door document.Door) []document.Violation {
-	var wrong []document.Violation
-	refuse := func(name, code, detail string) {
-		wrong = append(wrong, document.Violation{Parameter: name, Code: code, Detail: detail})
-	}
-	for i, p := range pairs {
-		switch {
-		case entries[p.Name] == nil:
-			refuse(p.Name, CodeUnknownName, unknown(p.Name))
-		case repeated(pairs[:i], p.Name):
-			refuse(p.Name, CodeRepeated, p.Name+" stands twice; give it once")
-		case !entries[p.Name].leaf.UsedBy(door):
-			refuse(p.Name, "not_used_here", p.Name+" has no use at this door; leave it out, or ask a larger one")
-		case strings.TrimSpace(p.Text) == "":
-			refuse(p.Name, CodeBlank, "a value is missing for "+p.Name+"; leave the name out, or give one")
-		case !utf8.ValidString(p.Text):
-			refuse(p.Name, "not_utf8", "these bytes are not UTF-8")
+// sift parts the pairs that mean something at the door from the unknown, repeated,
+// blank and unused ones.
+func sift(pairs []Pair, door document.Door) (good []Pair, wrong []document.Violation) {
+	for i := range pairs {
+		code, detail := fault(pairs[:i], &pairs[i], door)
+		if code == "" {
+			if wrong != nil {
+				good = append(good, pairs[i])
+			}
+			continue
 		}
+		if wrong == nil {
+			good = append(good, pairs[:i]...)
+		}
+		wrong = append(wrong, document.Violation{Parameter: pairs[i].Name, Code: code, Detail: detail})
 	}
-	return wrong
+	if wrong == nil {
+		return pairs, nil
+	}
+	return good, wrong
+}
+
+// fault is what is wrong with a pair, before its value is read.
+func fault(before []Pair, p *Pair, door document.Door) (code, detail string) {
+	switch {
+	case entries[p.Name] == nil:
+		return CodeUnknownName, unknown(p.Name)
+	case repeated(before, p.Name):
+		return CodeRepeated, p.Name + " stands twice; give it once"
+	case !entries[p.Name].leaf.UsedBy(door):
+		return "not_used_here", p.Name + " has no use at this door; leave it out, or ask a larger one"
+	case strings.TrimSpace(p.Text) == "":
+		return CodeBlank, "a value is missing for " + p.Name + "; leave the name out, or give one"
+	case !utf8.ValidString(p.Text):
+		return "not_utf8", "these bytes are not UTF-8"
+	}
+	return "", ""
 }
 
 func repeated(before []Pair, name string) bool {
