@@ -62,9 +62,9 @@ var refusalCases = []refusalCase{
 	{"an outlet with a free surface", "/outlet", "outside_domain", "free surface", with(partlyFull, object{"outlet": "free_discharge"})},
 	{"an impossible section at the inlet", "/inlet/inner_diameter", "outside_domain", "0.1", with(quiet(), object{"inlet": object{"shape": "annulus", "outer_diameter": 0.1, "inner_diameter": 0.2}})},
 	{"a depth above the crown at the outlet", "/outlet/liquid_depth", "outside_domain", "0.1", with(quiet(), object{"outlet": object{"shape": "circle", "diameter": 0.1, "liquid_depth": 0.2}})},
-	{"a gas that loses too much", "/flow", "outside_validity", "40 %", with(air(), object{"inlet_pressure": 400})},
+	{"a gas that loses too much", "/flow/velocity", "outside_validity", "40 %", with(air(), object{"inlet_pressure": 400})},
 
-	{"a gas that chokes", "/flow", "choked", "at most", with(nitrogen(), object{"flow": object{"mass_flow": 60}})},
+	{"a gas that chokes", "/flow/mass_flow", "choked", "at most", with(nitrogen(), object{"flow": object{"mass_flow": 60}})},
 	{"a gas that gains by its fittings", "/fittings", "outside_domain", "take pressure", with(nitrogen(), object{"fittings": []any{object{"loss_coefficient": -900}}})},
 	{"a gas model of a liquid", "/gas_model", "outside_domain", "leave", with(quiet(), object{"gas_model": "adiabatic"})},
 	{"an adiabatic gas known by density", "/gas_model", "outside_domain", "state", with(air(), object{"gas_model": "adiabatic"})},

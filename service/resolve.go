@@ -245,6 +245,11 @@ var resultsAt = map[string]string{
 	"flow": "/flow", "reynolds": "/flow", "loss_coefficient": "/fittings", "relative_roughness": "/roughness", "static_pressure_drop": "/flow",
 }
 
+// flowGiven is the pointer of the measure that the flow was given in.
+func (w *work) flowGiven() string {
+	return "/flow/" + [...]string{"reference_volume_flow", "volume_flow", "mass_flow", "velocity"}[w.req.Flow.By]
+}
+
 // place is the pointer of an error: the field it names, in the block where that
 // field stands, or the fitting or the end that it happened at.
 func (w *work) place(err error, e *calc.Error, pointer string) string {
@@ -260,6 +265,9 @@ func (w *work) place(err error, e *calc.Error, pointer string) string {
 		return "/flow/" + [...]string{"", "volume_flow", "mass_flow"}[w.req.Flow.By]
 	}
 	if at, ok := resultsAt[e.Quantity]; ok {
+		if at == "/flow" {
+			return w.flowGiven()
+		}
 		return at
 	}
 	if pointer == "/surroundings" {
