@@ -2,6 +2,7 @@ package service
 
 import (
 	"fmt"
+	"math"
 	"strconv"
 
 	"borewright/calc/catalog"
@@ -128,12 +129,12 @@ func (w *work) gas(out *answer.Answer) {
 	n := answer.Note{Code: "gas_taken_incompressible", Level: answer.Info,
 		Text: "A gas known by its density alone is taken as incompressible; this holds while the drop stays below 10 % of the absolute pressure."}
 	if p := &r.Pressure; p.InletPressure.Valid {
-		part := p.StaticPressureDrop.Value / p.InletPressure.Value
+		part := math.Abs(p.StaticPressureDrop.Value) / p.InletPressure.Value
 		if part <= segment.GasDropNoted {
 			return // as it should be
 		}
 		n.Level = answer.Caution
-		n.Text = fmt.Sprintf("The gas loses %.3g %% of its absolute pressure and is taken as incompressible; above 10 %% that is doubtful.", 100*part)
+		n.Text = fmt.Sprintf("The absolute pressure of the gas changes by %.3g %% and it is taken as incompressible; above 10 %% that is doubtful.", 100*part)
 	}
 	out.Notes = append(out.Notes, n)
 }
@@ -342,6 +343,9 @@ func (w *work) fluidDefaults(add func(string)) {
 func (w *work) flowDefaults(r *segment.Result, add func(string)) {
 	if w.req.GasModel == segment.ModelByFluid && r.Pressure.GasModel == segment.Isothermal {
 		add("gas_model isothermal")
+	}
+	if w.req.GasModel == segment.ModelByFluid && r.Conditions.GasIncompressible && r.Pressure.InletPressure.Valid {
+		add("gas_model incompressible")
 	}
 	if r.Conditions.RegimeUncertain && !w.in.Criteria.Lower.Valid && !w.in.Criteria.Upper.Valid {
 		add("regime limits " + strconv.FormatFloat(r.Regime.Lower, 'g', -1, 64) + " and " + strconv.FormatFloat(r.Regime.Upper, 'g', -1, 64))

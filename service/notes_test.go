@@ -57,6 +57,8 @@ var noteCases = []noteCase{
 	{"gas_rise_without_surroundings", "caution", with(nitrogen(), object{"rise": 20, "surroundings": nil}), "gauges"},
 	{"answered_at_choking", "caution", with(nitrogen(), object{"flow": object{"mass_flow": 60}, "answer_at_choking": true}), "choking_mass_flow"},
 	{"defaults_used", "info", with(nitrogen(), object{"gas_model": nil}), "gas_model isothermal"},
+	{"defaults_used", "info", with(air(), object{"inlet_pressure": 110000}), "gas_model incompressible"},
+	{"gas_taken_incompressible", "caution", with(air(), object{"inlet_pressure": 1500, "rise": -35, "length": 40}), "changes by"},
 	{"defaults_used", "info", with(nitrogen(), object{"fluid/compressibility_factor": nil}), "compressibility_factor 1"},
 	{"surge_not_calculated", "caution", with(named(object{"substance": "water", "temperature": 290, "pressure": 9e5}), object{"flow": object{"velocity": 4}}), "Here that is 5"},
 	{"surge_not_calculated", "caution", with(quiet(), object{"flow": object{"velocity": 4}}), "sound speed"},

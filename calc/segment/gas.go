@@ -1,6 +1,8 @@
 package segment
 
 import (
+	"math"
+
 	"borewright/calc"
 	"borewright/calc/fluid"
 )
@@ -20,10 +22,10 @@ func (out *Result) compressibility(in *Input) error {
 		return nil
 	}
 	p := &out.Pressure
-	drop := p.StaticPressureDrop.Value
+	drop := math.Abs(p.StaticPressureDrop.Value) // a falling line gains, and is as little incompressible
 	if most := gasDropRefused * p.InletPressure.Value; p.InletPressure.Valid && drop > max(most, 0) {
 		return &calc.Error{Kind: calc.ErrRange, Quantity: "static_pressure_drop", Value: drop, Max: most,
-			Detail: "this gas would lose more than 40 % of its absolute pressure; taking it as incompressible does not hold"}
+			Detail: "the absolute pressure of this gas would change by more than 40 %; taking it as incompressible does not hold"}
 	}
 	fastest := max(out.Flow.Velocity, p.InletVelocity, p.OutletVelocity)
 	if most := gasMachRefused * in.Fluid.SoundSpeed.Value; in.Fluid.SoundSpeed.Valid && fastest > most {
