@@ -2,6 +2,7 @@ package calc_test
 
 import (
 	"errors"
+	"fmt"
 	"math"
 	"regexp"
 	"strings"
@@ -25,6 +26,48 @@ func TestErrorsNameTheirKind(t *testing.T) {
 	plain := &calc.Error{Kind: calc.ErrNonFinite, Quantity: "velocity", Value: math.Inf(1)}
 	if plain.Error() != "velocity +Inf: result is not finite" {
 		t.Errorf("%v", plain)
+	}
+}
+
+// A kind is matched through any number of wrappings, and no kind is another.
+func TestKindsAreTold(t *testing.T) {
+	kinds := []error{calc.ErrDomain, calc.ErrRange, calc.ErrUnknown, calc.ErrChoked, calc.ErrNoConvergence, calc.ErrNonFinite}
+	for i, kind := range kinds {
+		wrapped := fmt.Errorf("line 7: %w", &calc.Error{Kind: kind, Quantity: "width"})
+		for j, other := range kinds {
+			if errors.Is(wrapped, other) != (i == j) {
+				t.Errorf("%v taken for %v", wrapped, other)
+			}
+		}
+		var e *calc.Error
+		if !errors.As(wrapped, &e) || e.Quantity != "width" {
+			t.Errorf("%v lost its quantity", wrapped)
+		}
+	}
+}
+
+func TestErrorText(t *testing.T) {
+	for want, e := range map[string]calc.Error{
+		"width 0.1: outside the domain":                   {Kind: calc.ErrDomain, Quantity: "width", Value: 0.1},
+		"width NaN: outside the domain 1 to 2":            {Kind: calc.ErrDomain, Quantity: "width", Value: math.NaN(), Min: 1, Max: 2},
+		"width 1e-09: outside the domain -1e+06 to 1e+06": {Kind: calc.ErrDomain, Quantity: "width", Value: 1e-9, Min: -1e6, Max: 1e6},
+		// bounds that are equal are none, and what would be right says more than bounds
+		"width 3: outside the domain":                       {Kind: calc.ErrDomain, Quantity: "width", Value: 3, Min: 2, Max: 2},
+		"width 3: outside the domain: at most half of that": {Kind: calc.ErrDomain, Quantity: "width", Value: 3, Min: 1, Max: 2, Detail: "at most half of that"},
+	} {
+		if got := e.Error(); got != want {
+			t.Errorf("%q, want %q", got, want)
+		}
+	}
+}
+
+// A zero that was given is not a number that is missing.
+func TestOptional(t *testing.T) {
+	if given := calc.Some(0); !given.Valid || given.Value != 0 || given == (calc.Optional{}) {
+		t.Errorf("%+v", given)
+	}
+	if v := calc.Some(-2.5); !v.Valid || v.Value != -2.5 {
+		t.Errorf("%+v", v)
 	}
 }
 

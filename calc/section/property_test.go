@@ -21,7 +21,8 @@ func anyShape(t *rapid.T, s float64) (shape section.Shape, height float64) {
 	case 0:
 		return section.Circle{Diameter: a}, a
 	case 1:
-		return section.Pipe{OutsideDiameter: a, WallThickness: a / 10, LiningThickness: a * k / 10}, 0
+		pipe := section.Pipe{OutsideDiameter: a, WallThickness: a / 8, LiningThickness: a * k / 8}
+		return pipe, pipe.OutsideDiameter - 2*pipe.WallThickness - 2*pipe.LiningThickness
 	case 2:
 		return section.Rectangle{Width: a, Height: b, CornerRadius: k * min(a, b) / 2}, b
 	case 3:
@@ -87,14 +88,7 @@ func TestSectionsScale(t *testing.T) {
 			return pair
 		})
 		shapes = draw.Draw(t, "sections")
-		a, errA := shapes[0].Of()
-		b, errB := shapes[1].Of()
-		if errA != nil || errB != nil { // a corner radius takes no liquid depth
-			if (errA == nil) != (errB == nil) {
-				t.Fatal(errA, errB)
-			}
-			return
-		}
+		a, b := of(t, shapes[0]), of(t, shapes[1])
 		near(t, "area", b.FlowArea, a.FlowArea*s*s, 1e-13)
 		near(t, "perimeter", b.WettedPerimeter, a.WettedPerimeter*s, 1e-13)
 		near(t, "hydraulic diameter", b.HydraulicDiameter, a.HydraulicDiameter*s, 1e-13)
@@ -171,9 +165,6 @@ func TestRisingLiquid(t *testing.T) {
 			return
 		}
 		h := height * rapid.Float64Range(0.01, 0.99).Draw(t, "filling")
-		if _, err := (section.Section{Shape: shape, LiquidDepth: calc.Some(h)}).Of(); err != nil {
-			return // a rectangle with round corners
-		}
 		step := height * 1e-5
 		below, at, above := filled(t, shape, h-step), filled(t, shape, h), filled(t, shape, h+step)
 		if !(below.FlowArea < at.FlowArea && at.FlowArea < above.FlowArea) || !(at.FillRatio.Value > 0 && at.FillRatio.Value < 1) || !at.FreeSurface {
