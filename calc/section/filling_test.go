@@ -197,3 +197,23 @@ func TestOpenTrapezoidIsTheClosedOne(t *testing.T) {
 		}
 	}
 }
+
+// At a bend one formula takes over from another, and none of the sums jumps.
+func TestNothingJumpsAtABend(t *testing.T) {
+	bends := 0
+	for _, v := range vessels {
+		t.Run(v.name, func(t *testing.T) {
+			for _, b := range v.bends {
+				bends++
+				below, at, above := filled(t, v.shape, math.Nextafter(b, 0)), filled(t, v.shape, b), filled(t, v.shape, math.Nextafter(b, 1))
+				for what, f := range map[string]func(section.Properties) float64{"area": area, "wall": wetted, "moment": moment} {
+					near(t, fmt.Sprintf("%s below %g", what, b), f(below), f(at), 2e-15)
+					near(t, fmt.Sprintf("%s above %g", what, b), f(above), f(at), 2e-15)
+				}
+			}
+		})
+	}
+	if bends == 0 {
+		t.Error("no vessel has a bend")
+	}
+}
